@@ -1,0 +1,5 @@
+"""`python -m feedpoint` is the command `feedpoint`."""
+
+from feedpoint.cli.app import main
+
+main()

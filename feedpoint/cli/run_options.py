@@ -1,0 +1,82 @@
+"""The run that the options of a command describe: a run sheet, or one cable."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, fields
+from typing import TYPE_CHECKING, Any
+
+from feedpoint.cli.options import band_ranges_hz, loss_points
+from feedpoint.errors import WrongUsage
+
+if TYPE_CHECKING:
+    from pathlib import Path
+
+    from feedpoint.run.record import Run
+
+
+@dataclass(frozen=True, slots=True)
+class CableOptions:
+    """One cable described by options; the fields are named as the keys of a run sheet."""
+
+    cable: str | None
+    length_m: float | None
+    z0_ohm: float | None
+    velocity_factor: float | None
+    loss: list[str] | None
+    length_tolerance_m: float | None
+    loss_tolerance_percent: float | None
+    velocity_factor_tolerance: float | None
+
+    def table(self) -> dict[str, Any]:
+        """Return what was stated, as the table of a section."""
+        stated = {field.name: getattr(self, field.name) for field in fields(self)}
+        stated["loss"] = loss_points(self.loss)
+        return {key: value for key, value in stated.items() if value is not None}
+
+
+@dataclass(frozen=True, slots=True)
+class RunOptions:
+    """Everything that a command says about its run."""
+
+    sheet: Path | None
+    cable: CableOptions
+    cables_file: Path | None
+    temperature_c: float | None
+    bands: list[str] | None
+
+    def run(self) -> Run:
+        """
+        Return the run.
+
+        Raises
+        ------
+        WrongUsage
+            If neither or both of run sheet and cable are described.
+        RunRefused
+            If what is described makes no run.
+        """
+        from feedpoint.assumed import Assumed
+        from feedpoint.run.sheet import read_run_sheet, run_of_section
+
+        table = self.cable.table()
+        if self.sheet is not None and table:
+            raise WrongUsage("--run and options that describe a cable contradict each other; use one of them.")
+        if self.sheet is not None:
+            run = read_run_sheet(self.sheet, cables_file=self.cables_file)
+        elif table:
+            run = run_of_section(table, cables_file=self.cables_file)
+        else:
+            raise WrongUsage(
+                "the run is not described; use --run SHEET, or --cable NAME --length 31.5m, or --z0, "
+                "--velocity-factor, --loss-at and --length."
+            )
+        if self.temperature_c is not None:
+            run = run.at_temperature(self.temperature_c, origin=Assumed("", "option", "--temperature"))
+        return run.with_bands(bands_of_options(self.bands))
+
+
+def bands_of_options(texts: list[str] | None) -> tuple[Any, ...]:
+    """Return the bands that `--band` names; each is called as it was written."""
+    from feedpoint.run.record import Band
+
+    return tuple(Band(*band) for band in band_ranges_hz(texts))

@@ -1,0 +1,244 @@
+"""
+What people read off a sweep: resonances, minimum SWR, the SWR <= 2 band, the worst SWR of a band.
+
+Between the points of the sweep the reflection is the cubic through the four nearest points, in real and imaginary part:
+local, so that a disturbed point reaches no further than its neighbours. Nothing is read outside the sweep.
+"""
+
+from collections.abc import Callable, Iterator, Sequence
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+from numpy.polynomial import Polynomial
+
+from feedpoint.interval import Interval
+from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line.reflection import impedance_from_reflection, swr_from_reflection
+from feedpoint.run.record import Band
+
+# |Gamma|^2 at SWR 2.
+_SWR_2 = 1.0 / 9.0
+# Im Gamma must leave a strip of this many standard deviations of the sweep's own scatter on both sides of a resonance,
+# else noise around a resistive load would be a row of resonances. The strip's half-width is never more than 0.005: a
+# coarse sweep of a clean antenna looks like scatter too.
+_SCATTER_MULTIPLE = 3.0
+_WIDEST_STRIP = 0.005
+# Rounding of the de-embedding, in case the scatter is none.
+_NARROWEST_STRIP = 1e-12
+# A band edge that differs from the sweep's end by rounding lies on it.
+_SAME_FREQUENCY = 1e-9
+
+ResonanceKind = Literal["series", "parallel"]
+
+
+@dataclass(frozen=True, slots=True)
+class Resonance:
+    """A zero of Im Gamma: frequency [Hz], resistance there [ohm], and whether X rises (series) or falls (parallel)."""
+
+    frequency_hz: Interval
+    resistance_ohm: Interval
+    kind: ResonanceKind
+
+
+@dataclass(frozen=True, slots=True)
+class BandReading:
+    """A band of the user's, with the worst SWR in it; null where the sweep does not cover the band."""
+
+    band: Band
+    worst_swr: Interval
+
+
+@dataclass(frozen=True, slots=True)
+class Landmarks:
+    """Readings at one end of a run."""
+
+    resonances: tuple[Resonance, ...]
+    minimum_swr: Interval
+    minimum_swr_hz: Interval
+    swr2_low_hz: Interval
+    swr2_high_hz: Interval
+    bands: tuple[BandReading, ...]
+
+
+def landmarks_of(
+    frequency_hz: RealArray,
+    gamma: ComplexArray,
+    reference_ohm: float,
+    swr_gamma: ComplexArray,
+    bands: Sequence[Band],
+) -> Landmarks:
+    """
+    Read the landmarks off a reflection.
+
+    Parameters
+    ----------
+    frequency_hz : array (F,) [Hz]
+    gamma : complex array (F,), against `reference_ohm` [ohm]
+        Where the resonances are read.
+    swr_gamma : complex array (F,)
+        The same reflection against the resistance that SWR refers to.
+    bands : bands to look into
+    """
+    curve = _Curve(frequency_hz, swr_gamma)
+    low, high = float(frequency_hz[0]), float(frequency_hz[-1])
+    minimum_hz, minimum = curve.extreme(low, high, np.argmin)
+    edges = (None, None) if minimum > _SWR_2 else curve.edges(minimum_hz, _SWR_2)
+    return Landmarks(
+        tuple(_resonances(frequency_hz, gamma, reference_ohm)),
+        Interval(_swr(minimum)),
+        Interval(minimum_hz),
+        Interval(edges[0]),
+        Interval(edges[1]),
+        tuple(BandReading(band, Interval(_worst_swr(curve, band))) for band in bands),
+    )
+
+
+def _swr(power: float) -> float:
+    return float(swr_from_reflection(np.sqrt(np.array(power, dtype=complex))))
+
+
+def _worst_swr(curve: "_Curve", band: Band) -> float | None:
+    low, high = float(curve.frequency[0]), float(curve.frequency[-1])
+    if band.low_hz < low * (1 - _SAME_FREQUENCY) or band.high_hz > high * (1 + _SAME_FREQUENCY):
+        return None
+    return _swr(curve.extreme(max(band.low_hz, low), min(band.high_hz, high), np.argmax)[1])
+
+
+class _Curve:
+    """|Gamma|^2 against frequency, between the points too."""
+
+    def __init__(self, frequency_hz: RealArray, gamma: ComplexArray) -> None:
+        self.frequency = frequency_hz
+        self.gamma = gamma
+
+    def piece(self, interval: int) -> tuple[Polynomial, float, float]:
+        """|Gamma|^2 on an interval as a polynomial of t = (f - offset)/scale, with offset and scale [Hz]."""
+        local, offset, scale = local_cubic(self.frequency, self.gamma, interval)
+        real, imaginary = Polynomial(local.real), Polynomial(local.imag)
+        return real * real + imaginary * imaginary, offset, scale
+
+    def interval_of(self, frequency_hz: float) -> int:
+        """Index of the interval that a frequency [Hz] lies in."""
+        after = int(np.searchsorted(self.frequency, frequency_hz, side="right"))
+        return min(max(after - 1, 0), max(self.frequency.size - 2, 0))
+
+    def extreme(self, low_hz: float, high_hz: float, pick: Callable[[RealArray], np.intp]) -> tuple[float, float]:
+        """Where in a range |Gamma|^2 is lowest or highest (`pick`: argmin or argmax) [Hz], and its value there."""
+        inside = self.frequency[(self.frequency >= low_hz) & (self.frequency <= high_hz)]
+        places = np.unique(np.concatenate([[low_hz], inside, [high_hz]]))
+        best = float(places[pick(self.at(places))])
+        intervals = {self.interval_of(best), self.interval_of(np.nextafter(best, -np.inf))}
+        between = [f for interval in intervals for f in self._turning_points(interval) if low_hz < f < high_hz]
+        candidates = np.array([best, *between])
+        values = self.at(candidates)
+        chosen = int(pick(values))
+        return float(candidates[chosen]), float(values[chosen])
+
+    def at(self, frequency_hz: RealArray) -> RealArray:
+        """|Gamma|^2 at frequencies within the sweep."""
+        exact = np.isin(frequency_hz, self.frequency)
+        values = np.empty(frequency_hz.size)
+        values[exact] = np.abs(self.gamma[np.searchsorted(self.frequency, frequency_hz[exact])]) ** 2
+        for place in np.flatnonzero(~exact):
+            polynomial, offset, scale = self.piece(self.interval_of(frequency_hz[place]))
+            values[place] = polynomial((frequency_hz[place] - offset) / scale)
+        return values
+
+    def edges(self, centre_hz: float, level: float) -> tuple[float | None, float | None]:
+        """Nearest frequencies [Hz] below and above a centre where |Gamma|^2 passes `level`; None beyond the sweep."""
+        intervals = range(self.frequency.size - 1)
+        start = self.interval_of(centre_hz)
+        below = (self._passings(i, level) for i in reversed(intervals[: start + 1]))
+        above = (self._passings(i, level) for i in intervals[start:])
+        low = next((max(inside) for found in below if (inside := [f for f in found if f <= centre_hz])), None)
+        high = next((min(inside) for found in above if (inside := [f for f in found if f >= centre_hz])), None)
+        return low, high
+
+    def _passings(self, interval: int, level: float) -> list[float]:
+        ends = np.abs(self.gamma[interval : interval + 2]) ** 2
+        if np.all(ends < 0.5 * level):
+            # Well below the level at both ends: no need to look between them.
+            return []
+        polynomial, offset, scale = self.piece(interval)
+        return list(self._roots(polynomial - level, interval, offset, scale))
+
+    def _turning_points(self, interval: int) -> list[float]:
+        if self.frequency.size < 2:
+            return []
+        polynomial, offset, scale = self.piece(interval)
+        return list(self._roots(polynomial.deriv(), interval, offset, scale))
+
+    def _roots(self, polynomial: Polynomial, interval: int, offset: float, scale: float) -> Iterator[float]:
+        low, high = self.frequency[interval], self.frequency[interval + 1]
+        yield from (offset + scale * t for t in real_roots(polynomial, (low - offset) / scale, (high - offset) / scale))
+
+
+def local_cubic(frequency_hz: RealArray, gamma: ComplexArray, interval: int) -> tuple[ComplexArray, float, float]:
+    """
+    Coefficients, lowest first, of the cubic through the four points nearest to an interval, with offset and scale.
+
+    The variable is t = (f - offset)/scale, offset the lower end of the interval [Hz] and scale its width. Sweeps of
+    fewer points give a polynomial of lower degree.
+    """
+    count = min(4, frequency_hz.size)
+    first = min(max(interval - 1, 0), frequency_hz.size - count)
+    chosen = slice(first, first + count)
+    offset = float(frequency_hz[interval])
+    scale = float(frequency_hz[interval + 1]) - offset if frequency_hz.size > 1 else 1.0
+    powers = np.vander((frequency_hz[chosen] - offset) / scale, increasing=True)
+    coefficients: ComplexArray = np.linalg.solve(powers, gamma[chosen]).astype(complex)
+    return coefficients, offset, scale
+
+
+def real_roots(polynomial: Polynomial, low: float, high: float) -> list[float]:
+    """Real roots of a polynomial from `low` to `high`, rising."""
+    coefficients = polynomial.trim(1e-14 * float(np.abs(polynomial.coef).max())).coef
+    if coefficients.size < 2:
+        return []
+    roots = Polynomial(coefficients).roots()
+    # Roots of a companion matrix of degree <= 6 are good to about 1e-8 where two of them meet.
+    real = roots.real[np.abs(np.imag(roots)) < 1e-7]
+    return sorted(float(root) for root in real if low <= root <= high)
+
+
+def _resonances(frequency_hz: RealArray, gamma: ComplexArray, reference_ohm: float) -> Iterator[Resonance]:
+    """Resonances of a reflection, rising in frequency."""
+    for interval in crossings(gamma.imag, _strip(gamma)):
+        local, offset, scale = local_cubic(frequency_hz, gamma, interval)
+        imaginary = Polynomial(local.imag)
+        left, right = gamma.imag[interval], gamma.imag[interval + 1]
+        straight = left / (left - right)
+        at = min(real_roots(imaginary, 0.0, 1.0), key=lambda t: abs(t - straight), default=straight)
+        real = complex(Polynomial(local.real)(at), 0.0)
+        resistance = impedance_from_reflection(np.array(real), reference_ohm).real
+        # dX/df has the sign of d Im Gamma/df where Gamma is real: dZ/dGamma = 2 R/(1 - Gamma)^2 is positive there.
+        kind: ResonanceKind = "series" if right > left else "parallel"
+        yield Resonance(Interval(offset + scale * at), Interval(float(resistance)), kind)
+
+
+def _strip(gamma: ComplexArray) -> float:
+    """Half-width of the strip around 0 within which the sign of Im Gamma may be noise."""
+    if gamma.size < 5:
+        return _NARROWEST_STRIP
+    # Third differences cancel whatever is smooth; of white noise their standard deviation is sqrt(20) times its own.
+    scatter = float(np.median(np.abs(np.diff(gamma.imag, 3)))) / (0.6745 * np.sqrt(20.0))
+    return float(min(max(_SCATTER_MULTIPLE * scatter, _NARROWEST_STRIP), _WIDEST_STRIP))
+
+
+def crossings(values: RealArray, strip: float) -> list[int]:
+    """
+    Intervals (index of their lower point) in which `values` (F,) pass through 0 from one side of a strip to the other.
+
+    Of several sign changes on one way through the strip the middle one is given.
+    """
+    sides = np.where(np.abs(values) > strip, np.sign(values), 0.0)
+    decided = np.flatnonzero(sides)
+    turns = np.flatnonzero(sides[decided[1:]] != sides[decided[:-1]])
+    found = []
+    for start, stop in zip(decided[turns], decided[turns + 1], strict=True):
+        signs = np.sign(values[start : stop + 1])
+        signs[signs == 0.0] = sides[stop]
+        changes = np.flatnonzero(signs[1:] != signs[:-1])
+        found.append(int(start + changes[changes.size // 2]))
+    return found

@@ -1,0 +1,16 @@
+"""
+Physics of lines and two-ports: arrays in, arrays out.
+
+Nothing here knows files, sweeps or runs. Frequencies are arrays of shape (F,), drawn parameters have shape (T, 1), and
+results broadcast to (T, F) or (F,). The time factor is exp(+j w t): inductive reactance is positive.
+"""
+
+from typing import TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+RealArray: TypeAlias = NDArray[np.float64]
+ComplexArray: TypeAlias = NDArray[np.complex128]
+# A parameter that is one number, or one number per trial with shape (T, 1).
+RealLike: TypeAlias = float | RealArray

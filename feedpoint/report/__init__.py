@@ -1,0 +1,1 @@
+"""What people and programs read: tables, summaries, files. Nothing here computes with impedances."""

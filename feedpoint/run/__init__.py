@@ -1,0 +1,1 @@
+"""Runs: the sections between the shack end and the feed point, the sheet that describes them, and the catalogue."""

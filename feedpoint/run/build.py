@@ -1,0 +1,230 @@
+"""From checked tables to sections: every figure resolved, with where it came from."""
+
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Any
+
+from feedpoint.assumed import Assumed, Origin
+from feedpoint.errors import RunRefused, SweepRefused, quoted
+from feedpoint.line.loss_law import LossLaw
+from feedpoint.run.catalogue import Catalogue, CatalogueEntry, ratings, resolved_loss
+from feedpoint.run.forms import CableForm, Form, LumpedForm, TransformerForm, TwoPortForm
+from feedpoint.run.sections import (
+    CableSection,
+    CableTolerances,
+    LumpedSection,
+    Ratings,
+    Section,
+    TransformerSection,
+    velocity_factor_of_delay,
+)
+from feedpoint.run.toml_tables import checked
+from feedpoint.run.two_port_file import TwoPortSection
+from feedpoint.sweep.reader import read_network
+from feedpoint.units import METRES_PER_FOOT, SECONDS_PER_NANOSECOND
+
+_FORMS: dict[str, type[Form]] = {
+    "cable": CableForm,
+    "two-port": TwoPortForm,
+    "lumped": LumpedForm,
+    "transformer": TransformerForm,
+}
+_KIND_OF_KEY = {key: kind for kind, form in _FORMS.items() for key in form.model_fields if key != "name"}
+
+
+@dataclass(frozen=True, slots=True)
+class Workshop:
+    """What the building of a section needs beside its table."""
+
+    source: str
+    folder: Path
+    catalogue: Catalogue
+    origin: Origin = "sheet"
+
+    def refuse(self, message: str, key: str) -> RunRefused:
+        """Return the refusal of a key."""
+        return RunRefused(message, source=self.source, key=key)
+
+    def said(self, value: Any, place: str) -> Assumed[Any]:
+        """Return a value that the table states."""
+        return Assumed(value, self.origin, place)
+
+
+def section_of_table(table: dict[str, Any], place: str, workshop: Workshop) -> Section:
+    """
+    Return the section that a table describes; its keys tell the kind.
+
+    Raises
+    ------
+    RunRefused
+        With file, section and key, for anything that makes no section.
+    """
+    kinds = list(dict.fromkeys(_KIND_OF_KEY[key] for key in table if key in _KIND_OF_KEY))
+    if len(kinds) > 1:
+        keys = [next(key for key in table if _KIND_OF_KEY.get(key) == kind) for kind in kinds[:2]]
+        raise workshop.refuse(
+            f"{quoted(keys[0])} belongs to a {kinds[0]} section and {quoted(keys[1])} to a {kinds[1]} section; "
+            "expected one kind. Make two sections of it.",
+            place,
+        )
+    kind = kinds[0] if kinds else "cable"
+    form = checked(_FORMS[kind], table, workshop.source, place, _KIND_OF_KEY)
+    name = table.get("name", "")
+    match form:
+        case TwoPortForm():
+            return _two_port(form, name or place, place, workshop)
+        case LumpedForm():
+            return _lumped(form, name or place, place, workshop)
+        case TransformerForm():
+            ratio = workshop.said(form.impedance_ratio, place)
+            return TransformerSection(name or place, ratio)
+        case CableForm():
+            return _cable(form, name or form.cable or place, place, workshop)
+    raise AssertionError(kind)
+
+
+def _two_port(form: TwoPortForm, name: str, place: str, workshop: Workshop) -> TwoPortSection:
+    path = workshop.folder / form.two_port
+    key = f"{place}, two_port"
+    try:
+        network = read_network(path)
+    except SweepRefused as problem:
+        raise RunRefused(f"{key}: {problem}", source=workshop.source) from None
+    if network.reference_ohm.size != 2:
+        raise workshop.refuse(f"{form.two_port} has {network.reference_ohm.size} port(s); expected two.", key)
+    file = workshop.said(str(path), key)
+    return TwoPortSection(name, file, network.points.frequency_hz, network.points.values, network.reference_ohm)
+
+
+def _lumped(form: LumpedForm, name: str, place: str, workshop: Workshop) -> LumpedSection:
+    values = form.model_dump(exclude={"name"}, exclude_none=True)
+    connections = list(dict.fromkeys(key.partition("_")[0] for key in values))
+    if len(connections) > 1:
+        raise workshop.refuse("both series_ and shunt_ elements; expected one kind. Make two sections of it.", place)
+    elements = {key.partition("_")[2]: value for key, value in values.items()}
+    return LumpedSection(name, connections[0], **elements, origin=workshop.said("", place))
+
+
+def _cable(form: CableForm, name: str, place: str, workshop: Workshop) -> CableSection:
+    entry = workshop.catalogue.find(form.cable, workshop.source, f"{place}, cable") if form.cable else None
+    length_m = _length_m(form, place, workshop)
+    delay_s = _delay_s(form, length_m, place, workshop)
+    velocity_factor = _velocity_factor(form, entry, length_m, delay_s, place, workshop)
+    tolerances = _tolerances(form, length_m, place, workshop)
+    z0_ohm = _figure(form, "z0_ohm", entry, place, workshop)
+    if tolerances.z0_ohm is not None and tolerances.z0_ohm >= z0_ohm.value:
+        raise workshop.refuse("the tolerance is not smaller than z0 itself.", f"{place}, z0_tolerance_ohm")
+    own = ratings(form)
+    known = entry.ratings if entry else Ratings()
+    tempco = form.delay_tempco_ppm_per_k
+    return CableSection(
+        name,
+        z0_ohm,
+        velocity_factor,
+        workshop.said(length_m, place),
+        _loss(form, entry, velocity_factor.value, place, workshop),
+        workshop.said(delay_s, f"{place}, delay_ns") if delay_s is not None else None,
+        workshop.said(tempco, place) if tempco is not None else _catalogue_tempco(entry),
+        tolerances,
+        Ratings(own.max_voltage_rms_v or known.max_voltage_rms_v, own.max_power_w or known.max_power_w),
+        entry.name if entry else "",
+    )
+
+
+def _catalogue_tempco(entry: CatalogueEntry | None) -> Assumed[float]:
+    if entry is None or entry.delay_tempco_ppm_per_k is None:
+        return Assumed(0.0, "default")
+    return Assumed(entry.delay_tempco_ppm_per_k, "catalogue", entry.name)
+
+
+def _one_of(form: CableForm, metres: str, feet: str, place: str, workshop: Workshop) -> float | None:
+    """Return a length [m] that may be stated in metres or in feet, but not in both."""
+    in_metres: float | None = getattr(form, metres)
+    in_feet: float | None = getattr(form, feet)
+    if in_metres is not None and in_feet is not None:
+        raise workshop.refuse(f"both {metres} and {feet}; expected one of them.", place)
+    return in_feet * METRES_PER_FOOT if in_feet is not None else in_metres
+
+
+def _length_m(form: CableForm, place: str, workshop: Workshop) -> float:
+    length_m = _one_of(form, "length_m", "length_ft", place, workshop)
+    if length_m is None:
+        raise workshop.refuse("length_m (or length_ft) is missing; a cable section needs its length.", place)
+    return length_m
+
+
+def _delay_s(form: CableForm, length_m: float, place: str, workshop: Workshop) -> float | None:
+    if form.delay_ns is None:
+        return None
+    if form.velocity_factor is not None:
+        raise workshop.refuse("both delay_ns and velocity_factor; expected one of them.", place)
+    if length_m <= 0:
+        raise workshop.refuse("a delay needs a length above 0; expected length_m above 0.", f"{place}, delay_ns")
+    delay_s = form.delay_ns * SECONDS_PER_NANOSECOND
+    if (velocity_factor := velocity_factor_of_delay(length_m, delay_s)) > 1:
+        raise workshop.refuse(
+            f"{form.delay_ns:g} ns for {length_m:g} m is {velocity_factor:.3g} times the velocity of light; expected "
+            "the one-way delay of that length.",
+            f"{place}, delay_ns",
+        )
+    return delay_s
+
+
+def _velocity_factor(
+    form: CableForm,
+    entry: CatalogueEntry | None,
+    length_m: float,
+    delay_s: float | None,
+    place: str,
+    workshop: Workshop,
+) -> Assumed[float]:
+    if delay_s is not None:
+        return workshop.said(velocity_factor_of_delay(length_m, delay_s), f"{place}, delay_ns")
+    return _figure(form, "velocity_factor", entry, place, workshop)
+
+
+def _figure(
+    form: CableForm, key: str, entry: CatalogueEntry | None, place: str, workshop: Workshop
+) -> Assumed[float]:
+    """Return z0_ohm or velocity_factor: the table's own, else the catalogue's."""
+    own = getattr(form, key)
+    if own is not None:
+        return workshop.said(own, place)
+    if entry is not None:
+        return Assumed(getattr(entry, key), "catalogue", entry.name)
+    instead = " (or delay_ns)" if key == "velocity_factor" else ""
+    raise workshop.refuse(f"{key}{instead} is missing; expected it, or a cable of the catalogue.", place)
+
+
+def _loss(
+    form: CableForm, entry: CatalogueEntry | None, velocity_factor: float, place: str, workshop: Workshop
+) -> Assumed[LossLaw]:
+    own = resolved_loss(form, velocity_factor, workshop.source, place)
+    if own is not None:
+        return workshop.said(own, place)
+    if entry is not None:
+        return Assumed(entry.loss_law(velocity_factor), "catalogue", entry.name)
+    raise workshop.refuse(
+        "loss is missing; expected loss points, or conductor_loss (0 if the line shall have none).", place
+    )
+
+
+def _tolerances(form: CableForm, length_m: float, place: str, workshop: Workshop) -> CableTolerances:
+    length_tolerance_m = _one_of(form, "length_tolerance_m", "length_tolerance_ft", place, workshop)
+    if length_tolerance_m is not None and length_tolerance_m > length_m:
+        raise workshop.refuse("the tolerance is larger than the length itself.", f"{place}, length_tolerance_m")
+    if form.delay_ns is None and form.delay_tolerance_ns is not None:
+        raise workshop.refuse("a tolerance of a delay that is not stated; expected delay_ns too.", place)
+    if form.delay_ns is not None and form.velocity_factor_tolerance is not None:
+        raise workshop.refuse("velocity_factor_tolerance beside delay_ns; expected delay_tolerance_ns.", place)
+    delay_tolerance_s = form.delay_tolerance_ns
+    if delay_tolerance_s is not None:
+        delay_tolerance_s *= SECONDS_PER_NANOSECOND
+    return CableTolerances(
+        length_tolerance_m,
+        form.velocity_factor_tolerance,
+        delay_tolerance_s,
+        form.loss_tolerance_percent,
+        form.z0_tolerance_ohm,
+        form.delay_tempco_tolerance_ppm_per_k,
+    )

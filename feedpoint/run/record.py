@@ -1,0 +1,103 @@
+"""A run: all that lies between shack end and feed point, with the conditions of the sweep."""
+
+from dataclasses import dataclass, field, replace
+
+from feedpoint.assumed import Assumed
+from feedpoint.errors import RunRefused
+from feedpoint.line import RealArray
+from feedpoint.run.sections import CableSection, Section, SectionTwoPort, Surroundings
+
+# Physical sense, not a limit of the formulas: no cable is swept outside.
+COLDEST_C, HOTTEST_C = -100.0, 250.0
+
+
+@dataclass(frozen=True, slots=True)
+class Band:
+    """A band that matters to the user: from `low_hz` to `high_hz` [Hz], with the SWR that is acceptable there."""
+
+    name: str
+    low_hz: float
+    high_hz: float
+    swr_limit: float | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class AnalyzerErrors:
+    """
+    Residual errors of the analyzer after its calibration; None where nothing was stated.
+
+    Directivity, source match and tracking in dB (95 % limits), `noise` the standard deviation of each of Re and Im of
+    Gamma, `calibration` names the calibration that sweeps may share. `extension_s` is the one-way electrical delay that
+    was set when the sweep was saved: it multiplied Gamma by exp(+j 2 w extension).
+    """
+
+    directivity_db: float | None = None
+    source_match_db: float | None = None
+    tracking_db: float | None = None
+    noise: float | None = None
+    calibration: str | None = None
+    extension_s: float = 0.0
+
+    @property
+    def is_stated(self) -> bool:
+        """Whether any residual error was stated."""
+        figures = (self.directivity_db, self.source_match_db, self.tracking_db, self.noise)
+        return any(figure is not None for figure in figures)
+
+
+def _room_temperature() -> Assumed[float]:
+    return Assumed(20.0, "default")
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Run:
+    """
+    An ordered chain of sections, first = at the shack end, with the temperature of its cables during the sweep.
+
+    An empty chain is legal: the sweep was taken at the antenna terminals.
+
+    Raises
+    ------
+    RunRefused
+        If the temperature is none that a cable has.
+    """
+
+    sections: tuple[Section, ...]
+    name: str = "run"
+    temperature_c: Assumed[float] = field(default_factory=_room_temperature)
+    temperature_tolerance_c: float | None = None
+    analyzer: AnalyzerErrors = field(default_factory=AnalyzerErrors)
+    bands: tuple[Band, ...] = ()
+    source: str = "run"
+
+    def __post_init__(self) -> None:
+        object.__setattr__(self, "sections", tuple(self.sections))
+        if not COLDEST_C <= self.temperature_c.value <= HOTTEST_C:
+            raise RunRefused(
+                f"a cable temperature of {self.temperature_c.value:g} C; expected {COLDEST_C:g} to {HOTTEST_C:g} C.",
+                source=self.source,
+                key=self.temperature_c.where or "temperature_c",
+            )
+
+    def at_temperature(self, temperature_c: float, *, origin: Assumed[str] | None = None) -> "Run":
+        """Return the run at another cable temperature [degrees C]; `origin` says whose word that is."""
+        said = origin or Assumed("", "call")
+        return replace(self, temperature_c=Assumed(temperature_c, said.origin, said.where))
+
+    def with_bands(self, bands: tuple[Band, ...]) -> "Run":
+        """Return the run with more bands."""
+        return replace(self, bands=self.bands + bands)
+
+    @property
+    def states_tolerances(self) -> bool:
+        """Whether any tolerance or analyzer figure was stated, from which an interval could follow."""
+        return (
+            self.temperature_tolerance_c is not None
+            or self.analyzer.is_stated
+            or any(section.tolerances.are_stated for section in self.sections if isinstance(section, CableSection))
+        )
+
+    def two_ports(self, frequency_hz: RealArray, reference_ohm: float) -> tuple[SectionTwoPort, ...]:
+        """Each section's two-port at frequencies (F,) [Hz], at the run's temperature; shack end first."""
+        surroundings = Surroundings(self.temperature_c.value, reference_ohm)
+        return tuple(section.two_port(frequency_hz, surroundings) for section in self.sections)

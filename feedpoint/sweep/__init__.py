@@ -1,0 +1,1 @@
+"""Sweeps: the record, the readers of the file formats, and the checks that every sweep passes."""

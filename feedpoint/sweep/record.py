@@ -1,0 +1,94 @@
+"""A sweep: one-port complex reflection against frequency."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field, replace
+from types import MappingProxyType
+
+import numpy as np
+from numpy.typing import ArrayLike
+
+from feedpoint.errors import SweepRefused
+from feedpoint.finding import Finding
+from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line.reflection import reflection_from_impedance
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Sweep:
+    """
+    One-port complex reflection against frequency, as saved by an analyzer.
+
+    Attributes
+    ----------
+    frequency_hz : array (F,), F >= 1 [Hz]
+        Finite, positive and strictly rising.
+    gamma : complex array (F,)
+        Reflection against `reference_ohm`; finite, exactly 1 for an open circuit. Both arrays are read-only copies.
+    reference_ohm : float > 0 [ohm]
+    source : str
+        File name or another name that messages use.
+    sha256 : str
+        Of the file's bytes; empty for a sweep that was not read from a file.
+    understood_as : mapping
+        What the file was understood to be, in the words that `inspect` shows.
+    comments : tuple of str
+        Comment lines of the file.
+    findings : tuple of Finding
+
+    Raises
+    ------
+    SweepRefused
+        If the arrays make no sweep.
+    """
+
+    frequency_hz: RealArray
+    gamma: ComplexArray
+    reference_ohm: float = 50.0
+    source: str = "sweep"
+    sha256: str = ""
+    understood_as: Mapping[str, str | int | float] = field(default_factory=dict)
+    comments: tuple[str, ...] = ()
+    findings: tuple[Finding, ...] = ()
+
+    def __post_init__(self) -> None:
+        frequency = np.array(self.frequency_hz, dtype=float, ndmin=1)
+        gamma = np.array(self.gamma, dtype=complex, ndmin=1)
+        problem = _problem(frequency, gamma, self.reference_ohm)
+        if problem:
+            raise SweepRefused(problem, source=self.source)
+        frequency.setflags(write=False)
+        gamma.setflags(write=False)
+        object.__setattr__(self, "frequency_hz", frequency)
+        object.__setattr__(self, "gamma", gamma)
+        object.__setattr__(self, "reference_ohm", float(self.reference_ohm))
+        object.__setattr__(self, "understood_as", MappingProxyType(dict(self.understood_as)))
+
+    @classmethod
+    def from_impedance(
+        cls, frequency_hz: ArrayLike, impedance_ohm: ArrayLike, *, reference_ohm: float = 50.0, source: str = "sweep"
+    ) -> "Sweep":
+        """Sweep of an impedance (F,) [ohm], infinite values being open circuits, kept as its reflection."""
+        impedance = np.asarray(impedance_ohm, dtype=complex)
+        gamma = reflection_from_impedance(impedance, reference_ohm)
+        return cls(np.asarray(frequency_hz, dtype=float), gamma, reference_ohm, source)
+
+    def with_gamma(self, gamma: ComplexArray) -> "Sweep":
+        """Return the sweep with another reflection (F,) at the same frequencies."""
+        return replace(self, gamma=gamma)
+
+
+def _problem(frequency: RealArray, gamma: ComplexArray, reference_ohm: float) -> str:
+    """Say what keeps the arrays from being a sweep; empty if nothing does."""
+    if frequency.ndim != 1 or frequency.shape != gamma.shape:
+        return f"{frequency.shape} frequencies and {gamma.shape} reflections; expected one of each per point."
+    if frequency.size == 0:
+        return "no points; a sweep has at least one."
+    if not (np.isfinite(reference_ohm) and reference_ohm > 0):
+        return f"the reference resistance is {reference_ohm} ohm; expected a positive number."
+    if not (np.all(np.isfinite(frequency)) and np.all(np.isfinite(gamma))):
+        return "a value is not finite; every frequency and reflection must be a number."
+    if frequency[0] <= 0:
+        return f"the frequency {frequency[0]:g} Hz is not positive."
+    if np.any(np.diff(frequency) <= 0):
+        return f"the frequencies do not rise at point {int(np.argmax(np.diff(frequency) <= 0)) + 2}."
+    return ""
