@@ -74,7 +74,9 @@ def return_loss_db(gamma: ComplexArray) -> RealArray:
 
 
 def ratio(numerator: NDArray[Any], denominator: NDArray[Any]) -> ComplexArray:
-    """Quotient of two complex arrays of one shape, `inf+0j` where the denominator is exactly 0."""
+    """Quotient of two complex arrays of one shape, `inf+0j` where the denominator is 0 or so small that it overflows."""
     quotient = np.full(np.broadcast(numerator, denominator).shape, OPEN_CIRCUIT_OHM)
-    np.divide(numerator, denominator, out=quotient, where=denominator != 0.0)
+    with np.errstate(over="ignore", invalid="ignore"):
+        np.divide(numerator, denominator, out=quotient, where=denominator != 0.0)
+    quotient[~np.isfinite(quotient)] = OPEN_CIRCUIT_OHM
     return quotient

@@ -143,5 +143,5 @@ def _loss(result: FeedpointResult) -> str:
 
 def _interval_note(run: Run) -> str:
     if run.states_tolerances:
-        return "no interval: this version reads the stated tolerances but does not propagate them yet"
+        return "no interval: tolerances are stated, but this version does not propagate them"
     return "no interval: no tolerances stated"

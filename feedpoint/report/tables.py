@@ -77,9 +77,9 @@ def _groups(layout: Sequence[Column]) -> str:
     parts = []
     for name in dict.fromkeys(column.group for column in layout):
         width = sum(column.width for column in layout if column.group == name)
-        rule = max(width - len(name) - 3, 0)
+        rule = width - len(name) - 3
         ruled = f" {'-' * (rule // 2)} {name} {'-' * (rule - rule // 2)}"
-        parts.append(ruled if name and rule else name.rjust(width))
+        parts.append(ruled if name and rule > 3 else name.rjust(width))
     return "".join(parts).rstrip()
 
 
@@ -90,7 +90,6 @@ def _closing(rows: Rows) -> list[Line]:
     return [
         Line(""),
         Line(
-            f"{shown_rows} telling rows of {rows.points_of_sweep} points; --all shows every one, "
-            "--from/--to/--every/--at others."
+            f"{shown_rows} telling rows of {rows.points_of_sweep} points; --all, --from, --to, --every, --at show others."
         ),
     ]

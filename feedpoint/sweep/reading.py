@@ -12,10 +12,10 @@ from feedpoint.sweep.record import Sweep
 from feedpoint.units import NUMBER, parse_frequency_hz
 
 _UNSIGNED = NUMBER.removeprefix("[+-]?")
-# The imaginary unit stands before or after its number: 17.8-22j, 17.8-j22, -j22, 50.
+# The imaginary unit stands before or after its number: 17.8-22j, 17.8-j22, -j22, 50. A real part ends at a sign.
 _IMPEDANCE = re.compile(
-    rf"(?P<real>[+-]?{_UNSIGNED})?"
-    rf"(?:(?P<sign>[+-])?(?:j(?P<after>{_UNSIGNED})|(?P<before>{_UNSIGNED})j))?(?:ohms?|Ω)?",
+    rf"(?:(?P<real>[+-]?{_UNSIGNED})(?=[+-]|ohm|Ω|$))?"
+    rf"(?:(?P<sign>[+-]?)(?:j(?P<after>{_UNSIGNED})|(?P<before>{_UNSIGNED})j))?(?:ohms?|Ω)?",
     re.ASCII | re.IGNORECASE,
 )
 _OPEN = ("inf", "open")
@@ -45,7 +45,7 @@ def parse_impedance_ohm(text: str, whole: str = "") -> complex:
         return OPEN_CIRCUIT_OHM
     match = _IMPEDANCE.fullmatch(bare)
     reactance = match and (match["after"] or match["before"])
-    if match is None or not (match["real"] or reactance) or (match["real"] and reactance and not match["sign"]):
+    if match is None or not (match["real"] or reactance):
         raise WrongUsage(f"{quoted(whole or text)}: {quoted(text)} is not an impedance; write it like 17.8-22j.")
     sign = -1.0 if match["sign"] == "-" else 1.0
     value = complex(float(match["real"] or 0.0), sign * float(reactance or 0.0))

@@ -1,0 +1,118 @@
+"""Resonances, minimum SWR, SWR <= 2 band and worst SWR of a band, on curves whose answers are known in closed form."""
+
+import numpy as np
+import pytest
+
+from feedpoint.landmarks import crossings, landmarks_of
+from feedpoint.line.reflection import reflection_from_impedance
+from feedpoint.run.record import Band
+
+F0 = 14.1e6
+
+
+def series_circuit(frequency_hz, resistance=40.0, quality=12.0):
+    """R + jX of a series resonant circuit at F0."""
+    return resistance * (1 + 1j * quality * (frequency_hz / F0 - F0 / frequency_hz))
+
+
+def read(frequency_hz, impedance, reference=50.0, bands=()):
+    gamma = reflection_from_impedance(impedance, reference)
+    return landmarks_of(frequency_hz, gamma, reference, gamma, bands)
+
+
+@pytest.mark.parametrize("points", [21, 201, 2001])
+def test_series_resonance(points):
+    frequency = np.linspace(13e6, 15.3e6, points)
+    marks = read(frequency, series_circuit(frequency))
+    (resonance,) = marks.resonances
+    # A cubic through four points errs by h^4/24 of the fourth derivative: 100 Hz with 21 points, nothing with 201.
+    assert resonance.frequency_hz.value == pytest.approx(F0, abs=200.0 if points == 21 else 1.0)
+    assert resonance.resistance_ohm.value == pytest.approx(40.0, abs=0.01)
+    assert resonance.kind == "series"
+    assert marks.minimum_swr.value == pytest.approx(50.0 / 40.0, abs=1e-3)
+
+
+def test_parallel_resonance():
+    frequency = np.linspace(13e6, 15e6, 301)
+    (resonance,) = read(frequency, 2500.0 / series_circuit(frequency, 20.0) * 4).resonances
+    assert resonance.kind == "parallel"
+    assert resonance.frequency_hz.value == pytest.approx(F0, abs=1.0)
+    assert resonance.resistance_ohm.value == pytest.approx(500.0, rel=1e-5)
+
+
+def test_swr_2_edges():
+    frequency = np.linspace(12e6, 16e6, 401)
+    marks = read(frequency, series_circuit(frequency, 50.0))
+    # SWR 2 on 50 ohm with R = 50: |X| = 50 sqrt(2)/2 (|Gamma| = X/sqrt(4 R^2 + X^2) = 1/3), so f/F0 - F0/f = X/(50 Q).
+    x = np.sqrt(0.5) / 12.0
+    high = F0 * (x / 2 + np.sqrt(1 + x * x / 4))
+    assert marks.swr2_high_hz.value == pytest.approx(high, abs=2.0)
+    assert marks.swr2_low_hz.value == pytest.approx(F0 * F0 / high, abs=2.0)
+
+
+def test_a_dip_between_two_points_is_found_with_its_band():
+    frequency = F0 + np.array([-250e3, -150e3, -50e3, 50e3, 150e3, 250e3])
+    marks = read(frequency, series_circuit(frequency, 50.0, 110.0))
+    # Gamma = jx/(2 + jx), x = 2 Q df/F0 = 0.780 and 2.340 at the inner and outer points: |Gamma| 0.36, SWR above 2, at all.
+    # Half way, a cubic gives 9/8 of the inner minus 1/8 of the outer Re Gamma = x^2/(4 + x^2): 0.0763, an SWR of 1.165.
+    assert marks.minimum_swr.value == pytest.approx(1.165, abs=2e-3)
+    assert marks.minimum_swr_hz.value == pytest.approx(F0, abs=3e3)
+    assert frequency[2] < marks.swr2_low_hz.value < marks.minimum_swr_hz.value < marks.swr2_high_hz.value < frequency[3]
+
+
+def test_what_lies_outside_the_sweep_is_null():
+    frequency = np.linspace(14.0e6, 14.2e6, 51)
+    bands = (Band("inside", 14.05e6, 14.15e6), Band("outside", 14.1e6, 14.35e6), Band("whole", 14.0e6, 14.2e6))
+    marks = read(frequency, series_circuit(frequency, 50.0), bands=bands)
+    assert marks.swr2_low_hz.value is None
+    assert marks.swr2_high_hz.value is None
+    assert [reading.worst_swr.value is None for reading in marks.bands] == [False, True, False]
+
+
+def test_worst_swr_of_a_band_is_at_its_edge_between_points():
+    frequency = np.linspace(13e6, 15e6, 41)
+    edge = 14.337e6
+    (reading,) = read(frequency, series_circuit(frequency), bands=(Band("b", 14.05e6, edge),)).bands
+    gamma = reflection_from_impedance(series_circuit(np.array([edge])), 50.0)
+    assert reading.worst_swr.value == pytest.approx((1 + abs(gamma[0])) / (1 - abs(gamma[0])), rel=1e-3)
+
+
+@pytest.mark.parametrize("points", [1, 2, 3])
+def test_few_points_are_read_as_they_are(points):
+    frequency = np.linspace(14.0e6, 14.3e6, points) if points > 1 else np.array([14.0e6])
+    marks = read(frequency, series_circuit(frequency))
+    assert marks.minimum_swr.value is not None
+    assert len(marks.resonances) == (0 if points == 1 else 1)
+
+
+def test_noise_around_a_resistive_load_is_no_row_of_resonances():
+    rng = np.random.default_rng(3)
+    frequency = np.linspace(1e6, 30e6, 501)
+    noise = 1e-3 * (rng.standard_normal(501) + 1j * rng.standard_normal(501))
+    gamma = 0.2 + noise
+    assert landmarks_of(frequency, gamma, 50.0, gamma, ()).resonances == ()
+
+
+def test_noise_does_not_multiply_a_resonance():
+    rng = np.random.default_rng(4)
+    frequency = np.linspace(13.9e6, 14.3e6, 801)
+    noise = 1e-3 * (rng.standard_normal(801) + 1j * rng.standard_normal(801))
+    gamma = reflection_from_impedance(series_circuit(frequency), 50.0) + noise
+    (resonance,) = landmarks_of(frequency, gamma, 50.0, gamma, ()).resonances
+    assert resonance.frequency_hz.value == pytest.approx(F0, abs=2e3)
+
+
+def test_crossings_between_the_sides_of_a_strip():
+    values = np.array([-1.0, -0.2, 0.0, 0.1, -0.1, 0.3, 1.0, 0.2, -0.1, 0.2, 1.0, -1.0])
+    # Up: changes at 1-2 (0 counts as where it goes to), 3-4, 4-5: the middle one; then down between the last two.
+    assert crossings(values, 0.5) == [3, 10]
+    assert crossings(np.zeros(5), 1e-12) == []
+
+
+def test_swr_reference_leaves_resonances_alone():
+    frequency = np.linspace(13e6, 15e6, 201)
+    impedance = series_circuit(frequency)
+    gamma, against_75 = (reflection_from_impedance(impedance, reference) for reference in (50.0, 75.0))
+    marks = landmarks_of(frequency, gamma, 50.0, against_75, ())
+    assert marks.resonances[0].resistance_ohm.value == pytest.approx(40.0, abs=1e-4)
+    assert marks.minimum_swr.value == pytest.approx(75.0 / 40.0, abs=1e-3)
