@@ -130,7 +130,9 @@ def _planes(
 
 
 def _two_ports(run: Run, frequency_hz: RealArray, reference_ohm: float) -> tuple[SectionTwoPort, ...]:
-    two_ports = run.two_ports(frequency_hz, reference_ohm)
+    # A loss that overflows is refused below, in words.
+    with np.errstate(over="ignore", invalid="ignore"):
+        two_ports = run.two_ports(frequency_hz, reference_ohm)
     for number, (section, two_port) in enumerate(zip(run.sections, two_ports, strict=True), start=1):
         if np.max(two_port.matched_loss_db) > _MOST_LOSS_DB:
             at = int(np.argmax(two_port.matched_loss_db))

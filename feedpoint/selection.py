@@ -87,10 +87,10 @@ def _points_and_between(result: FeedpointResult, choice: RowChoice) -> tuple[Ind
     """Indices of the sweep's points that were asked for, and frequencies [Hz] that lie between points."""
     frequency = result.frequency_hz
     points = _range(result, choice) if choice.picks_points or not choice.at_hz else np.array([], dtype=int)
-    asked = np.unique(np.array(choice.at_hz, dtype=float))
+    asked = np.array(sorted(set(choice.at_hz)), dtype=float)
     nearest = np.searchsorted((frequency[1:] + frequency[:-1]) / 2.0, asked)
     on_point = np.isclose(asked, frequency[nearest], rtol=_SAME_FREQUENCY, atol=0.0)
-    return np.union1d(points, nearest[on_point]), asked[~on_point]
+    return np.array(sorted({*points.tolist(), *nearest[on_point].tolist()}), dtype=int), asked[~on_point]
 
 
 def _range(result: FeedpointResult, choice: RowChoice) -> Indices:

@@ -62,7 +62,7 @@ def _command(direction: str, description: str) -> Callable[..., None]:
         )
         run_options = RunOptions(run, one_cable, cables_file, temperature, band)
         output = OutputOptions(format_, out, strict, quiet)
-        output.check(len(sweeps or ()))
+        output.check(sweeps or [], [run, cables_file])
         choice = RowOptions(at, from_, to, every, all_rows).choice()
         results = _results(direction, _sources(sweeps, reading, reference, port), run_options, swr_reference, quiet)
         from feedpoint.report.summary import summary_of_ends

@@ -24,7 +24,7 @@ def inspect(
 ) -> None:
     """What a sweep file was understood to be, and the values at the shack end."""
     output = OutputOptions(format_, out, strict, quiet)
-    output.check(1)
+    output.check([sweep])
     choice = RowOptions(at, from_, to, every, all_rows).choice()
     from feedpoint.report.summary import summary_of_sweep
     from feedpoint.report.tables import shack_end_table

@@ -1,8 +1,9 @@
 """The options that commands share, each defined once."""
 
+from collections.abc import Callable
 from enum import StrEnum
 from pathlib import Path
-from typing import Annotated, TypeAlias
+from typing import Annotated, Any, TypeAlias, TypeVar
 
 import typer
 
@@ -27,6 +28,26 @@ class Format(StrEnum):
     JSON = "json"
 
 
+Parsed = TypeVar("Parsed")
+
+
+def _named(option: str, parse: Callable[[str], Parsed]) -> Callable[[str], Parsed]:
+    """Return `parse` with the option's name in front of its refusals."""
+
+    def parse_option(text: str) -> Parsed:
+        try:
+            return parse(text)
+        except WrongUsage as refusal:
+            raise WrongUsage(refusal.message, source=option) from None
+
+    return parse_option
+
+
+def _quantity(option: str, metavar: str, parse: Callable[[str], float], text: str) -> Any:
+    """Return the definition of an option that takes a quantity; `text` is its help."""
+    return typer.Option(option, metavar=metavar, parser=_named(option, parse), help=text)
+
+
 def _ratio(text: str) -> float:
     try:
         return parse_number(text)
@@ -45,7 +66,7 @@ Readings: TypeAlias = Annotated[
 ]
 Reference: TypeAlias = Annotated[
     float | None,
-    typer.Option("--reference", metavar="OHM", parser=parse_resistance_ohm, help="Reference of readings [50]."),
+    _quantity("--reference", "OHM", parse_resistance_ohm, "Reference of readings [50]."),
 ]
 Port: TypeAlias = Annotated[
     int | None,
@@ -61,15 +82,15 @@ Cable: TypeAlias = Annotated[
 ]
 Length: TypeAlias = Annotated[
     float | None,
-    typer.Option("--length", metavar="LENGTH", parser=parse_length_m, help="Its length, e.g. 31.5m or 103ft."),
+    _quantity("--length", "LENGTH", parse_length_m, "Its length, e.g. 31.5m or 103ft."),
 ]
 Z0: TypeAlias = Annotated[
     float | None,
-    typer.Option("--z0", metavar="OHM", parser=parse_resistance_ohm, help="Its characteristic resistance, e.g. 50ohm."),
+    _quantity("--z0", "OHM", parse_resistance_ohm, "Its characteristic resistance, e.g. 50ohm."),
 ]
 VelocityFactor: TypeAlias = Annotated[
     float | None,
-    typer.Option("--velocity-factor", metavar="V", parser=_ratio, help="Its velocity factor, e.g. 0.66."),
+    _quantity("--velocity-factor", "V", _ratio, "Its velocity factor, e.g. 0.66."),
 ]
 LossAt: TypeAlias = Annotated[
     list[str] | None,
@@ -77,15 +98,15 @@ LossAt: TypeAlias = Annotated[
 ]
 LengthTolerance: TypeAlias = Annotated[
     float | None,
-    typer.Option("--length-tolerance", metavar="LENGTH", parser=parse_length_m, help="Half-width, e.g. 0.1m."),
+    _quantity("--length-tolerance", "LENGTH", parse_length_m, "Half-width, e.g. 0.1m."),
 ]
 LossTolerance: TypeAlias = Annotated[
     float | None,
-    typer.Option("--loss-tolerance", metavar="PERCENT", parser=parse_percent, help="Half-width, e.g. 10%."),
+    _quantity("--loss-tolerance", "PERCENT", parse_percent, "Half-width, e.g. 10%."),
 ]
 VelocityFactorTolerance: TypeAlias = Annotated[
     float | None,
-    typer.Option("--velocity-factor-tolerance", metavar="V", parser=_ratio, help="Half-width, e.g. 0.01."),
+    _quantity("--velocity-factor-tolerance", "V", _ratio, "Half-width, e.g. 0.01."),
 ]
 CablesFile: TypeAlias = Annotated[
     Path | None,
@@ -93,7 +114,7 @@ CablesFile: TypeAlias = Annotated[
 ]
 Temperature: TypeAlias = Annotated[
     float | None,
-    typer.Option("--temperature", metavar="T", parser=parse_temperature_c, help="Of the cable, e.g. 35C or 95F."),
+    _quantity("--temperature", "T", parse_temperature_c, "Of the cable, e.g. 35C or 95F."),
 ]
 Bands: TypeAlias = Annotated[
     list[str] | None,
@@ -105,22 +126,17 @@ At: TypeAlias = Annotated[
 ]
 From: TypeAlias = Annotated[
     float | None,
-    typer.Option("--from", metavar="F", parser=parse_frequency_hz, help="Rows from this frequency on."),
+    _quantity("--from", "F", parse_frequency_hz, "Rows from this frequency on."),
 ]
 To: TypeAlias = Annotated[
     float | None,
-    typer.Option("--to", metavar="F", parser=parse_frequency_hz, help="Rows up to this frequency."),
+    _quantity("--to", "F", parse_frequency_hz, "Rows up to this frequency."),
 ]
 Every: TypeAlias = Annotated[int | None, typer.Option("--every", metavar="N", min=1, help="Every Nth row.")]
 AllRows: TypeAlias = Annotated[bool, typer.Option("--all", help="Every row, also in a table.")]
 SwrReference: TypeAlias = Annotated[
     float | None,
-    typer.Option(
-        "--swr-reference",
-        metavar="OHM",
-        parser=parse_resistance_ohm,
-        help="What SWR and return loss refer to [the sweep's reference].",
-    ),
+    _quantity("--swr-reference", "OHM", parse_resistance_ohm, "What SWR and return loss refer to [as the sweep]."),
 ]
 OutputFormat: TypeAlias = Annotated[Format | None, typer.Option("--format", help="Form of the output [table].")]
 Out: TypeAlias = Annotated[
@@ -135,14 +151,14 @@ def loss_points(texts: list[str] | None) -> list[dict[str, float]] | None:
     """Return loss points in the form of a run sheet."""
     if not texts:
         return None
-    return [{"mhz": hertz / 1e6, "db_per_100m": loss} for hertz, loss in map(parse_loss_at, texts)]
+    return [{"mhz": hertz / 1e6, "db_per_100m": loss} for hertz, loss in map(_named("--loss-at", parse_loss_at), texts)]
 
 
 def frequencies_hz(texts: list[str] | None) -> tuple[float, ...]:
     """Return the frequencies [Hz] of a repeatable option."""
-    return tuple(parse_frequency_hz(text) for text in texts or ())
+    return tuple(map(_named("--at", parse_frequency_hz), texts or ()))
 
 
 def band_ranges_hz(texts: list[str] | None) -> list[tuple[str, float, float]]:
     """Return text, low and high end [Hz] of each band of a repeatable option."""
-    return [(text, *parse_frequency_range_hz(text)) for text in texts or ()]
+    return [(text, *_named("--band", parse_frequency_range_hz)(text)) for text in texts or ()]

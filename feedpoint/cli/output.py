@@ -4,9 +4,8 @@ from __future__ import annotations
 
 import sys
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 import typer
 
@@ -23,8 +22,7 @@ _STYLES = {"note": "", "warning": "yellow", "error": "bold red"}
 _SUFFIXES = {".csv": "csv", ".json": "json", ".s1p": "s1p"}
 
 
-@dataclass(frozen=True, slots=True)
-class RowOptions:
+class RowOptions(NamedTuple):
     """The options that select rows."""
 
     at: list[str] | None
@@ -44,8 +42,7 @@ class RowOptions:
         return RowChoice(frequencies_hz(self.at), self.from_hz, self.to_hz, self.every, self.all_rows)
 
 
-@dataclass(frozen=True, slots=True)
-class OutputOptions:
+class OutputOptions(NamedTuple):
     """The options that say where results go."""
 
     form: Format | None
@@ -53,17 +50,20 @@ class OutputOptions:
     strict: bool
     quiet: bool
 
-    def check(self, sweeps: int) -> None:
-        """Refuse what contradicts itself, before any work is done."""
+    def check(self, sweeps: Sequence[Path], others: Sequence[Path | None] = ()) -> None:
+        """Refuse what contradicts itself or would overwrite an input (sweeps or others), before any work is done."""
         if self.out is None:
             return
+        for read in (*sweeps, *others):
+            if read is not None and self.out.resolve() == read.resolve():
+                raise WrongUsage(f"--out {quoted(str(self.out))} is read by this command; choose another name.")
         written = _SUFFIXES.get(self.out.suffix.lower())
         if written is None:
             raise WrongUsage(f"--out {quoted(str(self.out))}: expected a file that ends in .csv, .json or .s1p.")
         if self.form not in (None, Format.TABLE) and self.form != written:
             raise WrongUsage(f"--format {self.form} and --out {quoted(str(self.out))} contradict each other.")
-        if written == "s1p" and sweeps > 1:
-            raise WrongUsage(f"an .s1p file holds one sweep, not {sweeps}; use .csv or .json.")
+        if written == "s1p" and len(sweeps) > 1:
+            raise WrongUsage(f"an .s1p file holds one sweep, not {len(sweeps)}; use .csv or .json.")
 
     @property
     def file_form(self) -> str | None:
@@ -71,8 +71,7 @@ class OutputOptions:
         return _SUFFIXES[self.out.suffix.lower()] if self.out is not None else None
 
 
-@dataclass(frozen=True, slots=True)
-class Presentation:
+class Presentation(NamedTuple):
     """How a command shows itself: summary and table for people, and whether it is `inspect`, which has no run."""
 
     summary: Callable[[FeedpointResult], list[Line]]

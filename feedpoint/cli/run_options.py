@@ -2,8 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, fields
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, NamedTuple
 
 from feedpoint.cli.options import band_ranges_hz, loss_points
 from feedpoint.errors import WrongUsage
@@ -14,8 +13,16 @@ if TYPE_CHECKING:
     from feedpoint.run.record import Run
 
 
-@dataclass(frozen=True, slots=True)
-class CableOptions:
+# What a cable that is in no catalogue needs.
+_OPTION_OF_KEY = {
+    "length_m": "--length",
+    "z0_ohm": "--z0",
+    "velocity_factor": "--velocity-factor",
+    "loss": "--loss-at",
+}
+
+
+class CableOptions(NamedTuple):
     """One cable described by options; the fields are named as the keys of a run sheet."""
 
     cable: str | None
@@ -27,15 +34,22 @@ class CableOptions:
     loss_tolerance_percent: float | None
     velocity_factor_tolerance: float | None
 
+    def stated(self) -> dict[str, Any]:
+        """Return what was stated, under the keys of a section."""
+        values = self._asdict() | {"loss": loss_points(self.loss)}
+        return {key: value for key, value in values.items() if value is not None}
+
     def table(self) -> dict[str, Any]:
-        """Return what was stated, as the table of a section."""
-        stated = {field.name: getattr(self, field.name) for field in fields(self)}
-        stated["loss"] = loss_points(self.loss)
-        return {key: value for key, value in stated.items() if value is not None}
+        """Return the table of a section; empty if nothing was stated, `WrongUsage` if it was too little."""
+        table = self.stated()
+        needed = ["length_m"] if "cable" in table else list(_OPTION_OF_KEY)
+        missing = [_OPTION_OF_KEY[key] for key in needed if key not in table]
+        if table and missing:
+            raise WrongUsage(f"the run is not fully described; {' and '.join(missing)} missing.")
+        return table
 
 
-@dataclass(frozen=True, slots=True)
-class RunOptions:
+class RunOptions(NamedTuple):
     """Everything that a command says about its run."""
 
     sheet: Path | None
@@ -58,12 +72,11 @@ class RunOptions:
         from feedpoint.assumed import Assumed
         from feedpoint.run.sheet import read_run_sheet, run_of_section
 
-        table = self.cable.table()
-        if self.sheet is not None and table:
+        if self.sheet is not None and self.cable.stated():
             raise WrongUsage("--run and options that describe a cable contradict each other; use one of them.")
         if self.sheet is not None:
             run = read_run_sheet(self.sheet, cables_file=self.cables_file)
-        elif table:
+        elif table := self.cable.table():
             run = run_of_section(table, cables_file=self.cables_file)
         else:
             raise WrongUsage(

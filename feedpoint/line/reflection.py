@@ -18,6 +18,8 @@ from numpy.typing import NDArray
 from feedpoint.line import ComplexArray, RealArray
 
 OPEN_CIRCUIT_OHM = complex(np.inf, 0.0)
+# Relative to the reference; beyond 1e17 the reflection of any impedance rounds to 1, and beyond 1e150 squares overflow.
+_AS_GOOD_AS_OPEN = 1e100
 
 
 def reflection_from_impedance(impedance_ohm: ComplexArray, reference_ohm: float) -> ComplexArray:
@@ -36,7 +38,7 @@ def reflection_from_impedance(impedance_ohm: ComplexArray, reference_ohm: float)
     Z = -R.
     """
     impedance_ohm = np.asarray(impedance_ohm, dtype=complex)
-    is_open = np.isinf(impedance_ohm)
+    is_open = np.maximum(np.abs(impedance_ohm.real), np.abs(impedance_ohm.imag)) > _AS_GOOD_AS_OPEN * reference_ohm
     finite = np.where(is_open, 0.0, impedance_ohm)
     return np.where(is_open, 1.0, ratio(finite - reference_ohm, finite + reference_ohm))
 
@@ -74,7 +76,7 @@ def return_loss_db(gamma: ComplexArray) -> RealArray:
 
 
 def ratio(numerator: NDArray[Any], denominator: NDArray[Any]) -> ComplexArray:
-    """Quotient of two complex arrays of one shape, `inf+0j` where the denominator is 0 or so small that it overflows."""
+    """Quotient of two complex arrays of one shape, `inf+0j` where the denominator is 0 or all but 0."""
     quotient = np.full(np.broadcast(numerator, denominator).shape, OPEN_CIRCUIT_OHM)
     with np.errstate(over="ignore", invalid="ignore"):
         np.divide(numerator, denominator, out=quotient, where=denominator != 0.0)

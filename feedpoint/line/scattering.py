@@ -10,7 +10,7 @@ References
 import numpy as np
 
 from feedpoint.line import ComplexArray, RealArray
-from feedpoint.line.reflection import ratio
+from feedpoint.line.reflection import reflection_from_impedance
 
 
 def scattering_from_normalised_impedance(impedance: ComplexArray) -> ComplexArray:
@@ -19,12 +19,16 @@ def scattering_from_normalised_impedance(impedance: ComplexArray) -> ComplexArra
 
     A singular z + 1 gives infinite elements, for the caller to refuse.
     """
+    if impedance.shape[-1] == 1:
+        return reflection_from_impedance(impedance, 1.0)
     unit = np.eye(impedance.shape[-1], dtype=complex)
     return _solved(impedance + unit, impedance - unit)
 
 
 def scattering_from_normalised_admittance(admittance: ComplexArray) -> ComplexArray:
     """Scattering matrices (F, n, n) of normalised admittance matrices: (1 + y)^-1 (1 - y) [1]_."""
+    if admittance.shape[-1] == 1:
+        return -reflection_from_impedance(admittance, 1.0)
     unit = np.eye(admittance.shape[-1], dtype=complex)
     return _solved(unit + admittance, unit - admittance)
 
@@ -46,8 +50,7 @@ def _mean_references(reference_ohm: RealArray) -> RealArray:
 
 
 def _solved(left: ComplexArray, right: ComplexArray) -> ComplexArray:
-    if left.shape[-1] == 1:
-        return ratio(right, left)
+    # Beyond this, no digit of the quotient is right.
     singular = np.linalg.cond(left) > 1e15
     result = np.linalg.solve(np.where(singular[:, None, None], np.eye(left.shape[-1]), left), right).astype(complex)
     result[singular] = np.inf

@@ -5,7 +5,9 @@ Without an interval a figure is shown as finely as a field instrument resolves, 
 below a thousand, none above. Files carry full precision instead.
 """
 
-from math import isinf, isnan, log10
+from collections.abc import Sequence
+from itertools import pairwise
+from math import ceil, isinf, isnan, log10
 
 NOTHING = "-"
 
@@ -23,16 +25,28 @@ def shown(value: float | None) -> str:
     return text if float(text) else text.lstrip("-")
 
 
-def frequency_decimals(step_hz: float) -> int:
-    """Return how many decimals of a frequency in MHz tell points `step_hz` apart from one another."""
-    if step_hz <= 0:
+def frequency_decimals(frequencies_hz: Sequence[float]) -> int:
+    """Return how many decimals of a frequency in MHz show a tenth of the smallest step between rising frequencies."""
+    steps = [after - before for before, after in pairwise(frequencies_hz)]
+    if not steps:
         return 3
-    return min(max(int(-log10(step_hz / 1e6) + 0.999) + 1, 2), 6)
+    return min(max(ceil(-log10(min(steps) / 1e6)) + 1, 2), 6)
 
 
 def megahertz(frequency_hz: float, decimals: int) -> str:
     """Return a frequency [Hz] in MHz."""
     return f"{frequency_hz / 1e6:.{decimals}f}"
+
+
+_PREFIXES = ((1e-12, "p"), (1e-9, "n"), (1e-6, "u"), (1e-3, "m"), (1.0, ""), (1e3, "k"), (1e6, "M"))
+
+
+def with_prefix(value: float, unit: str) -> str:
+    """Return a value with its unit and a decimal prefix, three or four digits: 150 nH."""
+    scale, prefix = next(((s, p) for s, p in reversed(_PREFIXES) if abs(value) >= s), _PREFIXES[0])
+    if value == 0:
+        scale, prefix = 1.0, ""
+    return f"{value / scale:.4g} {prefix}{unit}"
 
 
 def plain_megahertz(frequency_hz: float) -> str:

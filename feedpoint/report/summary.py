@@ -6,12 +6,27 @@ from itertools import zip_longest
 from feedpoint.errors import one_line
 from feedpoint.landmarks import BandReading, Landmarks
 from feedpoint.report.lines import Line
-from feedpoint.report.rounding import plain_megahertz, shown
+from feedpoint.report.rounding import frequency_decimals, megahertz, plain_megahertz, shown, with_prefix
 from feedpoint.result import FeedpointResult
 from feedpoint.run.record import Run
 
 _LABEL, _COLUMN = 18, 31
 _MOST_RESONANCES = 8
+_SHOWN = (
+    ("length_m", "", "m"),
+    ("z0_ohm", "", "ohm"),
+    ("velocity_factor", "v ", ""),
+    ("delay_ns", "", "ns"),
+    ("impedance_ratio", "impedance ratio ", ""),
+    ("two_port", "", ""),
+    ("series_resistance_ohm", "series ", "ohm"),
+    ("series_inductance_h", "series ", "H"),
+    ("series_capacitance_f", "series ", "F"),
+    ("shunt_resistance_ohm", "shunt ", "ohm"),
+    ("shunt_inductance_h", "shunt ", "H"),
+    ("shunt_capacitance_f", "shunt ", "F"),
+)
+_PREFIXED = ("H", "F")
 _ORIGINS = {
     "catalogue": "catalogue",
     "sheet": "run sheet",
@@ -28,7 +43,7 @@ def summary_of_ends(result: FeedpointResult) -> list[Line]:
     lines = [Line(one_line(f"{result.sweep.source}, {verb} {result.run.name}:"), "bold")]
     lines += [Line(f"  {text}") for text in _sections(result.run)]
     lines += [Line(""), _row("", "at the antenna terminals", "at the shack end", "bold")]
-    lines += _readings(result.landmarks, result.shack_landmarks)
+    lines += _readings(result, [result.landmarks, result.shack_landmarks])
     lines += [Line(_loss(result)), Line(_interval_note(result.run)), Line("")]
     return lines
 
@@ -45,18 +60,18 @@ def summary_of_sweep(result: FeedpointResult) -> list[Line]:
     lines += [Line(f"{'comment':<{_LABEL}}{one_line(comment)}") for comment in sweep.comments[:10]]
     if len(sweep.comments) > 10:
         lines.append(Line(f"{'':<{_LABEL}}({len(sweep.comments) - 10} more comment lines)"))
-    lines += [Line(""), _row("", "at the shack end", "", "bold")]
-    return [*lines, *_readings(result.shack_landmarks, None), Line("")]
+    lines += [Line(""), _row("", "at the shack end", style="bold")]
+    return [*lines, *_readings(result, [result.shack_landmarks]), Line("")]
 
 
-def _row(label: str, first: str, second: str, style: str = "") -> Line:
+def _row(label: str, first: str, second: str = "", style: str = "") -> Line:
     return Line(f"{label:<{_LABEL}}{first:<{_COLUMN}}{second}".rstrip(), style)
 
 
 def _sections(run: Run) -> Iterator[str]:
     for section in run.sections:
         figures = section.figures()
-        parts = [f"{name}{_figure(figures[key].value)}{unit}" for key, name, unit in _SHOWN if key in figures]
+        parts = [name + _figure(figures[key].value, unit) for key, name, unit in _SHOWN if key in figures]
         origins = dict.fromkeys(_ORIGINS[figure.origin] for figure in figures.values())
         cable = f" ({section.cable})" if section.cable not in ("", section.name) else ""
         yield one_line(f"{section.name}{cable}: {', '.join(parts)} [{', '.join(origins)}]")
@@ -64,45 +79,27 @@ def _sections(run: Run) -> Iterator[str]:
     yield f"cable temperature {temperature.value:g} C [{_ORIGINS[temperature.origin]}]"
 
 
-_SHOWN = (
-    ("length_m", "", " m"),
-    ("z0_ohm", "", " ohm"),
-    ("velocity_factor", "v ", ""),
-    ("delay_ns", "", " ns"),
-    ("impedance_ratio", "impedance ratio ", ""),
-    ("two_port", "", ""),
-    ("series_resistance_ohm", "series ", " ohm"),
-    ("series_inductance_h", "series ", " H"),
-    ("series_capacitance_f", "series ", " F"),
-    ("shunt_resistance_ohm", "shunt ", " ohm"),
-    ("shunt_inductance_h", "shunt ", " H"),
-    ("shunt_capacitance_f", "shunt ", " F"),
-)
+def _figure(value: float | str, unit: str) -> str:
+    if isinstance(value, str):
+        return value
+    return with_prefix(value, unit) if unit in _PREFIXED else f"{value:.4g} {unit}".rstrip()
 
 
-def _figure(value: float | str) -> str:
-    return value if isinstance(value, str) else f"{value:.4g}"
-
-
-def _readings(first: Landmarks, second: Landmarks | None) -> Iterator[Line]:
-    ends = [first] if second is None else [first, second]
-    columns = [_resonances(end) for end in ends]
+def _readings(result: FeedpointResult, ends: Sequence[Landmarks]) -> Iterator[Line]:
+    decimals = frequency_decimals(result.frequency_hz.tolist())
+    columns = [_resonances(end, decimals) for end in ends]
     for number, cells in enumerate(zip_longest(*columns, fillvalue="")):
-        yield _row("resonance" if number == 0 else "", *_padded(cells))
-    yield _row("minimum SWR", *_padded([_minimum(end) for end in ends]))
-    yield _row("SWR <= 2", *_padded([_swr_2(end) for end in ends]))
+        yield _row("resonance" if number == 0 else "", *cells)
+    yield _row("minimum SWR", *(_minimum(end, decimals) for end in ends))
+    yield _row("SWR <= 2", *(_swr_2(end, decimals) for end in ends))
     for readings in zip(*(end.bands for end in ends), strict=True):
         label = one_line(f"worst SWR {readings[0].band.name}")
-        yield _row(label if len(label) < _LABEL else label[: _LABEL - 4] + "...", *_padded(_bands(readings)))
+        yield _row(label if len(label) < _LABEL else label[: _LABEL - 4] + "...", *_bands(readings))
 
 
-def _padded(cells: Sequence[str]) -> tuple[str, str]:
-    return (cells[0], cells[1] if len(cells) > 1 else "")
-
-
-def _resonances(end: Landmarks) -> list[str]:
+def _resonances(end: Landmarks, decimals: int) -> list[str]:
     cells = [
-        f"{plain_megahertz(resonance.frequency_hz.value or 0.0)} MHz, R {shown(resonance.resistance_ohm.value)} "
+        f"{megahertz(resonance.frequency_hz.value or 0.0, decimals)} MHz, R {shown(resonance.resistance_ohm.value)} "
         f"{resonance.kind}"
         for resonance in end.resonances[:_MOST_RESONANCES]
     ]
@@ -111,16 +108,16 @@ def _resonances(end: Landmarks) -> list[str]:
     return cells or ["none within the sweep"]
 
 
-def _minimum(end: Landmarks) -> str:
-    return f"{shown(end.minimum_swr.value)} at {plain_megahertz(end.minimum_swr_hz.value or 0.0)} MHz"
+def _minimum(end: Landmarks, decimals: int) -> str:
+    return f"{shown(end.minimum_swr.value)} at {megahertz(end.minimum_swr_hz.value or 0.0, decimals)} MHz"
 
 
-def _swr_2(end: Landmarks) -> str:
+def _swr_2(end: Landmarks, decimals: int) -> str:
     low, high = end.swr2_low_hz.value, end.swr2_high_hz.value
     if end.minimum_swr.value is None or end.minimum_swr.value > 2.0:
         return "nowhere"
-    low_text = plain_megahertz(low) if low is not None else "below the sweep"
-    high_text = f"{plain_megahertz(high)} MHz" if high is not None else "above the sweep"
+    low_text = megahertz(low, decimals) if low is not None else "below the sweep"
+    high_text = f"{megahertz(high, decimals)} MHz" if high is not None else "above the sweep"
     return f"{low_text} to {high_text}" if low is not None or high is not None else "the whole sweep"
 
 

@@ -1,7 +1,6 @@
 """Tables of rows, 80 columns wide."""
 
 from collections.abc import Sequence
-from itertools import pairwise
 from typing import NamedTuple
 
 from feedpoint.report.lines import Line
@@ -54,8 +53,7 @@ def shack_end_table(rows: Rows) -> list[Line]:
 
 def _table(layout: Sequence[Column], columns: Columns) -> list[Line]:
     frequencies = columns["frequency_hz"].tolist()
-    steps = [after - before for before, after in pairwise(frequencies)]
-    decimals = frequency_decimals(min(steps, default=0.0))
+    decimals = frequency_decimals(frequencies)
     cells = [[megahertz(frequency, decimals) for frequency in frequencies]]
     for column in layout[1:]:
         show_value = _magnitude if column.key == "shack_gamma_magnitude" else shown
@@ -90,6 +88,7 @@ def _closing(rows: Rows) -> list[Line]:
     return [
         Line(""),
         Line(
-            f"{shown_rows} telling rows of {rows.points_of_sweep} points; --all, --from, --to, --every, --at show others."
+            f"{shown_rows} telling rows of {rows.points_of_sweep} points; "
+            "--all, --from, --to, --every, --at show others."
         ),
     ]

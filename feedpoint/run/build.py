@@ -1,5 +1,6 @@
 """From checked tables to sections: every figure resolved, with where it came from."""
 
+from collections.abc import Callable
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
@@ -29,6 +30,7 @@ _FORMS: dict[str, type[Form]] = {
     "lumped": LumpedForm,
     "transformer": TransformerForm,
 }
+_KEYS_OF_MEASURED = ("open", "short", "load", "load_ohm", "open_capacitance_f", "short_inductance_h")
 _KIND_OF_KEY = {key: kind for kind, form in _FORMS.items() for key in form.model_fields if key != "name"}
 
 
@@ -38,7 +40,7 @@ class Workshop:
 
     source: str
     folder: Path
-    catalogue: Catalogue
+    catalogue: Callable[[], Catalogue]
     origin: Origin = "sheet"
 
     def refuse(self, message: str, key: str) -> RunRefused:
@@ -59,6 +61,12 @@ def section_of_table(table: dict[str, Any], place: str, workshop: Workshop) -> S
     RunRefused
         With file, section and key, for anything that makes no section.
     """
+    if measured := next((key for key in table if key in _KEYS_OF_MEASURED), None):
+        raise workshop.refuse(
+            f"{quoted(measured)} makes it a measured section, which this version does not read yet; expected a cable, "
+            "two_port, lumped or transformer section.",
+            place,
+        )
     kinds = list(dict.fromkeys(_KIND_OF_KEY[key] for key in table if key in _KIND_OF_KEY))
     if len(kinds) > 1:
         keys = [next(key for key in table if _KIND_OF_KEY.get(key) == kind) for kind in kinds[:2]]
@@ -106,14 +114,20 @@ def _lumped(form: LumpedForm, name: str, place: str, workshop: Workshop) -> Lump
 
 
 def _cable(form: CableForm, name: str, place: str, workshop: Workshop) -> CableSection:
-    entry = workshop.catalogue.find(form.cable, workshop.source, f"{place}, cable") if form.cable else None
+    entry = workshop.catalogue().find(form.cable, workshop.source, f"{place}, cable") if form.cable else None
     length_m = _length_m(form, place, workshop)
     delay_s = _delay_s(form, length_m, place, workshop)
     velocity_factor = _velocity_factor(form, entry, length_m, delay_s, place, workshop)
-    tolerances = _tolerances(form, length_m, place, workshop)
     z0_ohm = _figure(form, "z0_ohm", entry, place, workshop)
-    if tolerances.z0_ohm is not None and tolerances.z0_ohm >= z0_ohm.value:
-        raise workshop.refuse("the tolerance is not smaller than z0 itself.", f"{place}, z0_tolerance_ohm")
+    tolerances = _tolerances(form, place, workshop)
+    for key, tolerance, value in (
+        ("length_tolerance_m", tolerances.length_m, length_m),
+        ("z0_tolerance_ohm", tolerances.z0_ohm, z0_ohm.value),
+        ("velocity_factor_tolerance", tolerances.velocity_factor, velocity_factor.value),
+        ("delay_tolerance_ns", tolerances.delay_s, delay_s),
+    ):
+        if tolerance and value is not None and tolerance >= value:
+            raise workshop.refuse("the tolerance is not smaller than the value itself.", f"{place}, {key}")
     own = ratings(form)
     known = entry.ratings if entry else Ratings()
     tempco = form.delay_tempco_ppm_per_k
@@ -209,10 +223,8 @@ def _loss(
     )
 
 
-def _tolerances(form: CableForm, length_m: float, place: str, workshop: Workshop) -> CableTolerances:
+def _tolerances(form: CableForm, place: str, workshop: Workshop) -> CableTolerances:
     length_tolerance_m = _one_of(form, "length_tolerance_m", "length_tolerance_ft", place, workshop)
-    if length_tolerance_m is not None and length_tolerance_m > length_m:
-        raise workshop.refuse("the tolerance is larger than the length itself.", f"{place}, length_tolerance_m")
     if form.delay_ns is None and form.delay_tolerance_ns is not None:
         raise workshop.refuse("a tolerance of a delay that is not stated; expected delay_ns too.", place)
     if form.delay_ns is not None and form.velocity_factor_tolerance is not None:

@@ -115,8 +115,8 @@ def parse_catalogue(text: str, source: str) -> list[CatalogueEntry]:
 def _entry(table: object, source: str, place: str) -> CatalogueEntry:
     form = checked(CatalogueEntryForm, table, source, place)
     place = f"{place} ({form.name})"
-    # So that an entry without a usable loss is refused when the catalogue is read, not when it is used.
-    if resolved_loss(form, form.velocity_factor, source, place) is None:
+    # So that an entry without a usable loss is refused when the catalogue is read; the fit waits until it is used.
+    if loss_points(form, source, place) is None and not stated_terms(form):
         raise RunRefused("no loss; expected loss points or conductor_loss.", source=source, key=place)
     return CatalogueEntry(
         form.name,
@@ -146,15 +146,35 @@ def resolved_loss(form: LossKeys, velocity_factor: float, source: str, place: st
     Raises
     ------
     RunRefused
+        As `loss_points`.
+    """
+    points = loss_points(form, source, place)
+    if points is not None:
+        frequencies = [megahertz * HZ_PER_MHZ for megahertz in points]
+        return fit_loss_law(frequencies, list(points.values()), velocity_factor, with_floor=bool(form.steel_core))
+    if not stated_terms(form):
+        return None
+    return LossLaw(form.conductor_loss or 0.0, form.dielectric_loss or 0.0, form.floor_loss or 0.0)
+
+
+def stated_terms(form: LossKeys) -> list[str]:
+    """Return the keys of the loss law's terms that a section or entry states."""
+    return [key for key in _LOSS_TERMS if getattr(form, key) is not None]
+
+
+def loss_points(form: LossKeys, source: str, place: str) -> dict[float, float] | None:
+    """
+    Return the loss [dB/100 m] at frequencies [MHz] that a section or entry states; None where it states none.
+
+    Raises
+    ------
+    RunRefused
         For points and terms at once, a point without exactly one loss, or two points at one frequency.
     """
-    stated = [key for key in _LOSS_TERMS if getattr(form, key) is not None]
     if form.loss is None:
-        if not stated:
-            return None
-        return LossLaw(form.conductor_loss or 0.0, form.dielectric_loss or 0.0, form.floor_loss or 0.0)
-    if stated:
-        raise RunRefused(f"both loss points and {stated[0]}; expected one of them.", source=source, key=place)
+        return None
+    if terms := stated_terms(form):
+        raise RunRefused(f"both loss points and {terms[0]}; expected one of them.", source=source, key=place)
     points: dict[float, float] = {}
     for number, point in enumerate(form.loss, start=1):
         key = f"{place}, loss, entry {number}"
@@ -163,5 +183,4 @@ def resolved_loss(form: LossKeys, velocity_factor: float, source: str, place: st
         if point.mhz in points:
             raise RunRefused(f"a second loss at {point.mhz:g} MHz; expected one.", source=source, key=key)
         points[point.mhz] = point.db_per_100m or (point.db_per_100ft or 0.0) / METRES_PER_FOOT
-    frequencies = [megahertz * HZ_PER_MHZ for megahertz in points]
-    return fit_loss_law(frequencies, list(points.values()), velocity_factor, with_floor=bool(form.steel_core))
+    return points

@@ -8,29 +8,38 @@ from typing import Annotated
 
 from pydantic import BaseModel, ConfigDict, Field
 
-Positive = Annotated[float, Field(gt=0)]
-NotNegative = Annotated[float, Field(ge=0)]
+# The ranges are wide for anything that exists, and narrow enough that no figure overflows on its way.
+Positive = Annotated[float, Field(gt=0, le=1e12)]
+NotNegative = Annotated[float, Field(ge=0, le=1e12)]
+Megahertz = Annotated[float, Field(ge=1e-6, le=1e6)]
+Loss = Annotated[float, Field(ge=1e-6, le=1e5)]
+LossTerm = Annotated[float, Field(ge=0, le=1e5)]
+Resistance = Annotated[float, Field(ge=0.01, le=10_000)]
+VelocityFactor = Annotated[float, Field(ge=0.001, le=1)]
+Henry = Annotated[float, Field(ge=1e-15, le=1e3)]
+Farad = Annotated[float, Field(ge=1e-18, le=1.0)]
 Text = Annotated[str, Field(min_length=1)]
 
 
 class Form(BaseModel):
     """A table whose keys are all known and whose numbers are finite numbers, not texts or truth values."""
 
-    model_config = ConfigDict(extra="forbid", strict=True, allow_inf_nan=False, frozen=True)
+    # Built when first used: a command needs few of the forms, and each takes a millisecond.
+    model_config = ConfigDict(extra="forbid", strict=True, allow_inf_nan=False, frozen=True, defer_build=True)
 
 
 class LossPoint(Form):
     """A printed attenuation: `mhz` with `db_per_100m` or `db_per_100ft`."""
 
-    mhz: Positive
-    db_per_100m: Positive | None = None
-    db_per_100ft: Positive | None = None
+    mhz: Megahertz
+    db_per_100m: Loss | None = None
+    db_per_100ft: Loss | None = None
 
 
 class PowerPoint(Form):
     """A power rating: `w` [W] at `mhz`."""
 
-    mhz: Positive
+    mhz: Megahertz
     w: Positive
 
 
@@ -38,9 +47,9 @@ class LossKeys(Form):
     """The keys that give a loss law: points, or the three terms [dB/100 m, f in MHz]."""
 
     loss: Annotated[list[LossPoint], Field(min_length=1)] | None = None
-    conductor_loss: NotNegative | None = None
-    dielectric_loss: NotNegative | None = None
-    floor_loss: NotNegative | None = None
+    conductor_loss: LossTerm | None = None
+    dielectric_loss: LossTerm | None = None
+    floor_loss: LossTerm | None = None
     steel_core: bool | None = None
     max_voltage_rms_v: Positive | None = None
     max_power_w: Annotated[list[PowerPoint], Field(min_length=1)] | None = None
@@ -51,9 +60,9 @@ class CableForm(LossKeys):
 
     name: Text | None = None
     cable: Text | None = None
-    z0_ohm: Annotated[float, Field(gt=0, le=10_000)] | None = None
-    velocity_factor: Annotated[float, Field(gt=0, le=1)] | None = None
-    delay_ns: Positive | None = None
+    z0_ohm: Resistance | None = None
+    velocity_factor: VelocityFactor | None = None
+    delay_ns: Annotated[float, Field(gt=0, le=1e6)] | None = None
     length_m: Annotated[float, Field(ge=0, le=100_000)] | None = None
     length_ft: Annotated[float, Field(ge=0, le=328_000)] | None = None
     length_tolerance_m: NotNegative | None = None
@@ -78,11 +87,11 @@ class LumpedForm(Form):
 
     name: Text | None = None
     series_resistance_ohm: NotNegative | None = None
-    series_inductance_h: NotNegative | None = None
-    series_capacitance_f: Positive | None = None
-    shunt_resistance_ohm: Positive | None = None
-    shunt_inductance_h: Positive | None = None
-    shunt_capacitance_f: NotNegative | None = None
+    series_inductance_h: Annotated[float, Field(ge=0, le=1e3)] | None = None
+    series_capacitance_f: Farad | None = None
+    shunt_resistance_ohm: Annotated[float, Field(ge=1e-6, le=1e12)] | None = None
+    shunt_inductance_h: Henry | None = None
+    shunt_capacitance_f: Annotated[float, Field(ge=0, le=1.0)] | None = None
 
 
 class TransformerForm(Form):
@@ -125,8 +134,8 @@ class CatalogueEntryForm(LossKeys):
     """`[[cable]]` of a catalogue."""
 
     name: Text
-    z0_ohm: Annotated[float, Field(gt=0, le=10_000)]
-    velocity_factor: Annotated[float, Field(gt=0, le=1)]
+    z0_ohm: Resistance
+    velocity_factor: VelocityFactor
     dielectric: Text | None = None
     capacitance_pf_per_m: Positive | None = None
     delay_tempco_ppm_per_k: Annotated[float, Field(ge=-2000, le=2000)] | None = None

@@ -1,5 +1,6 @@
 """Run sheets: the TOML file that describes a run."""
 
+from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
@@ -42,9 +43,9 @@ def parse_run_sheet(
     tables = parse_toml(text, source)
     refuse_unknown_keys(tables, _TABLES, source, "")
     folder = folder or Path()
-    head = checked(RunForm, tables.get("run", {}), source, "[run]")
+    head = checked(RunForm, tables["run"], source, "[run]") if "run" in tables else RunForm()
     named = Path(cables_file) if cables_file is not None else (folder / head.cables_file if head.cables_file else None)
-    workshop = Workshop(source, folder, catalogue_with(named))
+    workshop = Workshop(source, folder, _catalogue_when_needed(named))
     sections = tuple(
         section_of_table(table, f"section {number}", workshop)
         for number, table in enumerate(_list_of_tables(tables, "section", source), start=1)
@@ -59,7 +60,7 @@ def parse_run_sheet(
         head.name or Path(source).stem,
         temperature,
         head.temperature_tolerance_c,
-        analyzer_errors(tables.get("analyzer", {}), source),
+        analyzer_errors(tables["analyzer"], source) if "analyzer" in tables else AnalyzerErrors(),
         _bands(tables, source),
         source,
     )
@@ -84,15 +85,16 @@ def run_of_section(table: dict[str, Any], *, cables_file: str | Path | None = No
     RunRefused
         Names the key.
     """
-    catalogue = catalogue_with(Path(cables_file) if cables_file is not None else None)
-    workshop = Workshop("", Path(), catalogue, "option")
-    return Run((section_of_table(table, "run described by options", workshop),), "described by options")
+    named = Path(cables_file) if cables_file is not None else None
+    workshop = Workshop("", Path(), _catalogue_when_needed(named), "option")
+    section = section_of_table({"name": table.get("cable", "cable"), **table}, "options", workshop)
+    return Run((section,), "the run given by options", source="options")
 
 
-def catalogue_with(path: Path | None) -> Catalogue:
-    """Return the built-in catalogue, extended by that of a file."""
-    catalogue = built_in_catalogue()
-    return catalogue if path is None else catalogue.extended(read_catalogue(path))
+def _catalogue_when_needed(path: Path | None) -> Callable[[], Catalogue]:
+    """Return what gives the built-in catalogue, extended by that of a file; the file is read (and refused) at once."""
+    own = read_catalogue(path) if path is not None else []
+    return lambda: built_in_catalogue().extended(own)
 
 
 def analyzer_errors(table: object, source: str) -> AnalyzerErrors:

@@ -25,6 +25,9 @@ def parse_toml(text: str, source: str) -> Table:
         line = int(place[1]) if place else text.count("\n") + 1
         what = message[: place.start()].strip() if place else message
         raise RunRefused(f"not valid TOML: {what}.", source=source, line=line) from None
+    except (ValueError, RecursionError):
+        # tomllib lets Python's own limits through: whole numbers of thousands of digits, nesting without end.
+        raise RunRefused("not a sheet: a number or a nesting beyond all sense.", source=source) from None
 
 
 def checked(form: type[AnyForm], table: object, source: str, place: str, known: Iterable[str] = ()) -> AnyForm:

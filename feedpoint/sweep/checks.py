@@ -58,8 +58,12 @@ def in_order(points: Points, source: str) -> tuple[Points, list[Finding]]:
 def _without_zero_frequency(points: Points, source: str, findings: list[Finding]) -> Points:
     negative = points.frequency_hz < 0
     if np.any(negative):
-        line = int(points.line[np.argmax(negative)])
-        raise SweepRefused("negative frequency; expected a positive one.", source=source, line=line)
+        at = int(np.argmax(negative))
+        raise SweepRefused(
+            f"the frequency {points.frequency_hz[at] / 1e6:.10g} MHz is negative; expected a positive one.",
+            source=source,
+            line=int(points.line[at]),
+        )
     at_zero = points.frequency_hz == 0
     if np.any(at_zero):
         message = f"{source}, line {points.line[np.argmax(at_zero)]}: the point at 0 Hz was left out."

@@ -11,7 +11,7 @@ from feedpoint.sweep.record import Sweep
 from feedpoint.sweep.text import decoded, read_bytes
 from feedpoint.sweep.touchstone import NetworkData, parse_touchstone
 
-_TOUCHSTONE_NAME = re.compile(r".*\.(?:[szy](?P<ports>[1-9][0-9]{0,2})p|ts)", re.IGNORECASE | re.DOTALL | re.ASCII)
+_TOUCHSTONE_NAME = re.compile(r".*\.(?:[szy](?P<ports>[1-9][0-9]?)p|ts)", re.IGNORECASE | re.DOTALL | re.ASCII)
 
 
 def read_sweep(path: str | Path, *, port: int | None = None) -> Sweep:

@@ -32,7 +32,7 @@ from feedpoint.sweep.touchstone_header import (
     references_ohm,
     take_keyword,
 )
-from feedpoint.sweep.touchstone_records import Records, parse_records
+from feedpoint.sweep.touchstone_records import BLANKS, Records, parse_records
 
 # Version-1 Z data are normalised to R; a median resistance above ten times R means that plain ohms were written.
 _PLAIN_OHM_RATIO = 10.0
@@ -63,6 +63,7 @@ class _Sections:
     comments: list[str] = field(default_factory=list)
     doubts: list[str] = field(default_factory=list)
     lines: int = 0
+    noise_line: int | None = None
 
 
 def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkData:
@@ -97,8 +98,9 @@ def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkDat
     if sections.data[-1][0] == sections.lines:
         doubts.append("the last record has no line end: it may be cut short")
     findings = [Finding("doubtful-file", "warning", f"{source}: {doubt}.") for doubt in doubts] + findings
-    if records.noise_line is not None:
-        message = f"{source}, line {records.noise_line}: noise data of the two-port were skipped."
+    noise_line = sections.noise_line or records.noise_line
+    if noise_line is not None:
+        message = f"{source}, line {noise_line}: noise data of the two-port were skipped."
         findings.append(Finding("noise-data-skipped", "note", message))
     return NetworkData(points, references, _understood(header), tuple(sections.comments), tuple(findings))
 
@@ -124,8 +126,8 @@ def _without_comments(lines: Iterable[tuple[int, str]], comments: list[str]) -> 
         content, mark, comment = line.partition("!")
         if mark and comment.strip():
             comments.append(comment.strip())
-        if content.strip():
-            yield number, content.strip()
+        if content.strip(BLANKS):
+            yield number, content.strip(BLANKS)
 
 
 def _split_version_1(sections: _Sections, content: Iterable[tuple[int, str]]) -> None:
@@ -157,15 +159,18 @@ def _take_options(header: Header, number: int, line: str) -> None:
 def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) -> None:
     header = sections.header
     place = "header"
+    opened = 0
     for number, line in content:
         if place == "end":
             sections.doubts.append(f"line {number} and what follows stand after [End] and were ignored")
             return
         lowered = " ".join(line.lower().split())
         if place == "information" or lowered == "[begin information]":
+            opened = opened or number
             place = "header" if lowered == "[end information]" else "information"
         elif line.startswith("["):
             place = _next_place(header, number, line, place)
+            sections.noise_line = number if place == "noise" else sections.noise_line
         elif line.startswith("#") and place == "header":
             if header.options is not None:
                 raise header.refuse("a second option line; expected one.", number)
@@ -176,6 +181,8 @@ def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) ->
             sections.reference_lines.append((number, line))
         elif place != "noise":
             raise header.refuse(f"{quoted(line)} before [Network Data]; expected a keyword.", number)
+    if place == "information":
+        raise header.refuse("[Begin Information] has no [End Information]; the data cannot be found.", opened)
     if place != "end":
         sections.doubts.append("[End] is missing: the file may be cut short")
 
@@ -222,7 +229,7 @@ def _scattering(header: Header, options: Options, references: RealArray, records
     infinite = ~np.isfinite(values).all(axis=(1, 2))
     if np.any(infinite):
         line = int(records.line[np.argmax(infinite)])
-        raise header.refuse(f"this {options.parameter} value is minus the reference and has no reflection.", line)
+        raise header.refuse(f"this {options.parameter} value has no finite reflection.", line)
     return values
 
 

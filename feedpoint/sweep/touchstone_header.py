@@ -23,6 +23,8 @@ _UNIT_NAMES = {1.0: "Hz", 1e3: "kHz", 1e6: "MHz", 1e9: "GHz"}
 _PARAMETERS = ("S", "Z", "Y")
 _FORMATS = ("RI", "MA", "DB")
 _VERSIONS = ("2.0", "2.1")
+# Room for every network that has a sweep in it; a wrong digit must not ask for gigabytes.
+MOST_PORTS = 99
 # Keywords of version 2 that may stand before [Network Data], in the spelling of the standard.
 _HEADER_KEYWORDS = {
     name.lower(): name
@@ -152,6 +154,8 @@ def take_keyword(header: Header, line: int, text: str) -> str:
 
 def _take_ports(header: Header, line: int, argument: str) -> None:
     ports = whole_number(header, line, argument, "[Number of Ports]")
+    if ports > MOST_PORTS:
+        raise header.refuse(f"[Number of Ports] is {ports}; expected at most {MOST_PORTS}.", line)
     if header.ports is not None and header.ports != ports:
         raise header.refuse(
             f"[Number of Ports] is {ports} but the file name says {header.ports}; expected the same. Rename the file.",

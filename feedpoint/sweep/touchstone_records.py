@@ -3,6 +3,7 @@
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass, field
+from math import inf, isinf
 
 import numpy as np
 from numpy.typing import NDArray
@@ -10,9 +11,12 @@ from numpy.typing import NDArray
 from feedpoint.errors import quoted
 from feedpoint.line import ComplexArray, RealArray
 from feedpoint.sweep.touchstone_header import Header
+from feedpoint.units import NUMBER
 
 # With only these signs left, float() accepts plain decimal numbers and nothing else.
-_NUMBERS_ONLY = re.compile(r"[0-9+\-.eE\s]*", re.ASCII)
+_NUMBERS_ONLY = re.compile(r"[0-9+\-.eE \t]*")
+# What may stand between numbers. Not whatever Unicode calls white space: a no-break space is a defect.
+BLANKS = " \t"
 _COLUMNS = {"RI": "real, imaginary", "MA": "magnitude, angle", "DB": "dB, angle"}
 _NOISE_NUMBERS = 5
 
@@ -57,7 +61,11 @@ def parse_records(header: Header, data: Iterable[tuple[int, str]]) -> Records:
     line = np.array(collected.line)
     values = _complex_values(header, table[:, 1::2], table[:, 2::2], line)
     assert header.options is not None
-    frequency_hz = table[:, 0] * header.options.unit_hz
+    with np.errstate(over="ignore"):
+        frequency_hz = table[:, 0] * header.options.unit_hz
+    if not np.all(np.isfinite(frequency_hz)):
+        at = int(line[np.argmin(np.isfinite(frequency_hz))])
+        raise header.refuse("the frequency is too large to be one; expected a finite number.", at)
     return Records(frequency_hz, _matrices(header, values), line, collected.noise_line)
 
 
@@ -111,22 +119,15 @@ def _wrong_count(header: Header, collected: _Collected, expected: int, texts: di
 def _numbers(header: Header, line: int, text: str) -> list[float]:
     if _NUMBERS_ONLY.fullmatch(text) is not None:
         try:
-            return [float(word) for word in text.split()]
+            numbers = [float(word) for word in text.split()]
+            if inf not in numbers and -inf not in numbers:
+                return numbers
         except ValueError:
             pass
-    for word in text.split():
-        if _NUMBERS_ONLY.fullmatch(word) is None or not _is_float(word):
-            hint = " Write decimal points, and blanks between the numbers." if "," in word else ""
-            raise header.refuse(f"{quoted(word)} is not a number; expected plain decimal digits.{hint}", line)
-    raise AssertionError(text)
-
-
-def _is_float(word: str) -> bool:
-    try:
-        float(word)
-    except ValueError:
-        return False
-    return True
+    words = re.split(f"[{BLANKS}]+", text)
+    wrong = next(word for word in words if re.fullmatch(NUMBER, word, re.ASCII) is None or isinf(float(word)))
+    hint = " Write decimal points, and blanks between the numbers." if "," in wrong else ""
+    raise header.refuse(f"{quoted(wrong)} is not a finite number in plain decimal digits (ASCII).{hint}", line)
 
 
 def _values_per_record(header: Header) -> int:
