@@ -7,7 +7,7 @@ Origin = Literal["catalogue", "sheet", "log", "option", "default", "call"]
 Value = TypeVar("Value")
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Assumed(Generic[Value]):
     """
     A value and its origin: catalogue, (run) sheet, (field) log, option, default, or a call from Python.

@@ -9,7 +9,7 @@ Severity = Literal["note", "warning", "error"]
 Figure = float | int | str | None
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Finding:
     """
     One thing that was noticed.

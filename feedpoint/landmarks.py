@@ -31,7 +31,7 @@ _SAME_FREQUENCY = 1e-9
 ResonanceKind = Literal["series", "parallel"]
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Resonance:
     """A zero of Im Gamma: frequency [Hz], resistance there [ohm], and whether X rises (series) or falls (parallel)."""
 
@@ -40,7 +40,7 @@ class Resonance:
     kind: ResonanceKind
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class BandReading:
     """A band of the user's, with the worst SWR in it; null where the sweep does not cover the band."""
 
@@ -48,7 +48,7 @@ class BandReading:
     worst_swr: Interval
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Landmarks:
     """Readings at one end of a run."""
 

@@ -21,7 +21,7 @@ _SAME_FREQUENCY = 1e-9
 Indices = NDArray[np.intp]
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class RowChoice:
     """What was asked for: single frequencies and ends of a range [Hz], every how-many-th point, all of them."""
 

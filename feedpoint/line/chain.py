@@ -17,7 +17,7 @@ import numpy as np
 from feedpoint.line import ComplexArray, RealArray, RealLike
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Chain:
     """
     Chain matrix of a two-port per frequency: V1 = a V2 + b I2, I1 = c V2 + d I2, with I2 flowing out of port 2 [1]_.

@@ -22,7 +22,7 @@ COPPER_RESISTANCE_PER_K = 0.00393
 LAW_TEMPERATURE_C = 20.0
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class LossLaw:
     """
     Attenuation of a cable against frequency: floor + conductor sqrt(f) + dielectric f.

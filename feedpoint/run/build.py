@@ -34,7 +34,7 @@ _KEYS_OF_MEASURED = ("open", "short", "load", "load_ohm", "open_capacitance_f", 
 _KIND_OF_KEY = {key: kind for kind, form in _FORMS.items() for key in form.model_fields if key != "name"}
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Workshop:
     """What the building of a section needs beside its table."""
 

@@ -21,7 +21,7 @@ BUILT_IN = "built-in catalogue"
 _LOSS_TERMS = ("conductor_loss", "dielectric_loss", "floor_loss")
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class CatalogueEntry:
     """One cable: the high-frequency figures, the points that a source prints, and those sources."""
 
@@ -44,7 +44,7 @@ class CatalogueEntry:
         return law
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Catalogue:
     """Entries by name; a later one shadows an earlier one of the same name."""
 

@@ -11,7 +11,7 @@ from feedpoint.run.sections import CableSection, Section, SectionTwoPort, Surrou
 COLDEST_C, HOTTEST_C = -100.0, 250.0
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Band:
     """A band that matters to the user: from `low_hz` to `high_hz` [Hz], with the SWR that is acceptable there."""
 
@@ -21,7 +21,7 @@ class Band:
     swr_limit: float | None = None
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class AnalyzerErrors:
     """
     Residual errors of the analyzer after its calibration; None where nothing was stated.
@@ -49,7 +49,7 @@ def _room_temperature() -> Assumed[float]:
     return Assumed(20.0, "default")
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Run:
     """
     An ordered chain of sections, first = at the shack end, with the temperature of its cables during the sweep.

@@ -29,7 +29,7 @@ from feedpoint.units import DECIBELS_PER_NEPER, SECONDS_PER_NANOSECOND, SPEED_OF
 Figures = Mapping[str, Assumed[float] | Assumed[str]]
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Surroundings:
     """What a section's two-port depends on beside the section: temperature [degrees C], sweep's reference [ohm]."""
 
@@ -37,7 +37,7 @@ class Surroundings:
     reference_ohm: float
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class SectionTwoPort:
     """
     One section at the frequencies of a sweep; arrays (F,) or (T, F).
@@ -74,7 +74,7 @@ class Section(Protocol):
         ...
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class CableValues:
     """
     The figures of a cable that physics sees, each a float or drawn values (T, 1).
@@ -89,7 +89,7 @@ class CableValues:
     delay_tempco_ppm_per_k: RealLike = 0.0
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class CableTolerances:
     """Half-widths of rectangular distributions (JCGM 100:2008, 4.3.7); None where nothing was stated."""
 
@@ -106,7 +106,7 @@ class CableTolerances:
         return self != CableTolerances()
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Ratings:
     """What the maker allows: rms voltage [V], and power [W] at frequencies [Hz]."""
 
@@ -114,7 +114,7 @@ class Ratings:
     max_power_w: tuple[tuple[float, float], ...] = ()
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class CableSection:
     """
     A length of cable.
@@ -190,7 +190,7 @@ def velocity_factor_of_delay(length_m: float, delay_s: float) -> float:
     return length_m / (SPEED_OF_LIGHT * delay_s)
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class LumpedSection:
     """Resistance [ohm], inductance [H], capacitance [F]: all in series with the run, or all in parallel across it."""
 
@@ -231,7 +231,7 @@ class LumpedSection:
         return lengthless(chain, frequency_hz, surroundings.reference_ohm)
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class TransformerSection:
     """An ideal transformer; `impedance_ratio` is antenna side : shack side."""
 

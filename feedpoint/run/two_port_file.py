@@ -17,7 +17,7 @@ _LEAST_THROUGH = 0.01
 _MOST_ONE_WAY = 0.1
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class TwoPortSection:
     """
     A section given by scattering parameters; port 1 is at the shack end.

@@ -21,7 +21,7 @@ _AGREEMENT = 1e-6
 DOUBTFUL_MAGNITUDE = 1.05
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Points:
     """Points of a file: frequency (F,) [Hz], values (F, ...), and the line that each came from (F,)."""
 

@@ -13,7 +13,7 @@ from feedpoint.line import ComplexArray, RealArray
 from feedpoint.line.reflection import reflection_from_impedance
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Sweep:
     """
     One-port complex reflection against frequency, as saved by an analyzer.

@@ -38,7 +38,7 @@ from feedpoint.sweep.touchstone_records import BLANKS, Records, parse_records
 _PLAIN_OHM_RATIO = 10.0
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class NetworkData:
     """
     Content of a Touchstone file: scattering parameters (F, n, n) against the references (n,) [ohm] of n ports.
@@ -53,7 +53,7 @@ class NetworkData:
     findings: tuple[Finding, ...]
 
 
-@dataclass(slots=True)
+@dataclass
 class _Sections:
     """The parts of a file: header, data lines, and what was found doubtful on the way."""
 

@@ -40,7 +40,7 @@ _HEADER_KEYWORDS = {
 }
 
 
-@dataclass(slots=True)
+@dataclass
 class Options:
     """The option line; the defaults are the standard's: `# GHz S MA R 50`."""
 
@@ -56,7 +56,7 @@ class Options:
         return _UNIT_NAMES[self.unit_hz]
 
 
-@dataclass(slots=True)
+@dataclass
 class Header:
     """Everything that the data section's meaning depends on."""
 

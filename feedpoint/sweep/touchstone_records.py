@@ -21,7 +21,7 @@ _COLUMNS = {"RI": "real, imaginary", "MA": "magnitude, angle", "DB": "dB, angle"
 _NOISE_NUMBERS = 5
 
 
-@dataclass(frozen=True, slots=True, eq=False)
+@dataclass(frozen=True, eq=False)
 class Records:
     """Frequencies (F,) [Hz], values (F, n, n) as in the file, line of each record (F,), first line of noise data."""
 
@@ -31,7 +31,7 @@ class Records:
     noise_line: int | None
 
 
-@dataclass(slots=True)
+@dataclass
 class _Collected:
     numbers: list[list[float]] = field(default_factory=list)
     line: list[int] = field(default_factory=list)

@@ -53,7 +53,7 @@ def test_swr_2_edges():
 def test_a_dip_between_two_points_is_found_with_its_band():
     frequency = F0 + np.array([-250e3, -150e3, -50e3, 50e3, 150e3, 250e3])
     marks = read(frequency, series_circuit(frequency, 50.0, 110.0))
-    # Gamma = jx/(2 + jx), x = 2 Q df/F0 = 0.780 and 2.340 at the inner and outer points: |Gamma| 0.36, SWR above 2, at all.
+    # Gamma = jx/(2 + jx), x = 2 Q df/F0 = 0.780 and 2.340 at the inner and outer points: |Gamma| >= 0.36, SWR above 2.
     # Half way, a cubic gives 9/8 of the inner minus 1/8 of the outer Re Gamma = x^2/(4 + x^2): 0.0763, an SWR of 1.165.
     assert marks.minimum_swr.value == pytest.approx(1.165, abs=2e-3)
     assert marks.minimum_swr_hz.value == pytest.approx(F0, abs=3e3)
