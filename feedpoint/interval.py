@@ -1,10 +1,9 @@
 """A value with the low and high end of its 95 % interval, where they are known."""
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 
-@dataclass(frozen=True)
-class Interval:
+class Interval(NamedTuple):
     """
     A scalar and its 95 % interval.
 

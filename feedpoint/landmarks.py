@@ -6,8 +6,7 @@ local, so that a disturbed point reaches no further than its neighbours. Nothing
 """
 
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass
-from typing import Literal
+from typing import Literal, NamedTuple
 
 import numpy as np
 
@@ -31,8 +30,7 @@ _SAME_FREQUENCY = 1e-9
 ResonanceKind = Literal["series", "parallel"]
 
 
-@dataclass(frozen=True)
-class Resonance:
+class Resonance(NamedTuple):
     """A zero of Im Gamma: frequency [Hz], resistance there [ohm], and whether X rises (series) or falls (parallel)."""
 
     frequency_hz: Interval
@@ -40,16 +38,14 @@ class Resonance:
     kind: ResonanceKind
 
 
-@dataclass(frozen=True)
-class BandReading:
+class BandReading(NamedTuple):
     """A band of the user's, with the worst SWR in it; null where the sweep does not cover the band."""
 
     band: Band
     worst_swr: Interval
 
 
-@dataclass(frozen=True)
-class Landmarks:
+class Landmarks(NamedTuple):
     """Readings at one end of a run."""
 
     resonances: tuple[Resonance, ...]

@@ -1,7 +1,7 @@
 """Which rows of a result are shown: those that were asked for, or about twenty telling ones."""
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,8 +21,7 @@ _SAME_FREQUENCY = 1e-9
 Indices = NDArray[np.intp]
 
 
-@dataclass(frozen=True)
-class RowChoice:
+class RowChoice(NamedTuple):
     """What was asked for: single frequencies and ends of a range [Hz], every how-many-th point, all of them."""
 
     at_hz: tuple[float, ...] = ()
@@ -37,8 +36,7 @@ class RowChoice:
         return self.from_hz is not None or self.to_hz is not None or self.every is not None or self.all_rows
 
 
-@dataclass(frozen=True, eq=False)
-class Rows:
+class Rows(NamedTuple):
     """Rows of a result: every column (N,), and the reflection (N,) that an .s1p file holds."""
 
     columns: Columns

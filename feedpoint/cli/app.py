@@ -1,6 +1,5 @@
 """The command `feedpoint`: its subcommands, and the one place that turns a refusal into a line and an exit code."""
 
-import gc
 import os
 import sys
 from typing import Annotated
@@ -49,8 +48,6 @@ def main() -> None:
     """Run the command; a refusal is one line on stderr, never a traceback."""
     # Nobody else's package has a say in how a run sheet is read; looking for such plugins takes 15 ms besides.
     os.environ["PYDANTIC_DISABLE_PLUGINS"] = "__all__"
-    # A command makes little garbage and lives for a fraction of a second; looking for cycles takes 5 % of that.
-    gc.set_threshold(100_000)
     try:
         app()
     except FeedpointError as refusal:

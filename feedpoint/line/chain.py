@@ -10,15 +10,15 @@ References
    conversion from S parameters: table 4.2) and eq. 2.44 (input impedance). Numbers from memory.
 """
 
-from dataclasses import dataclass
+
+from typing import NamedTuple
 
 import numpy as np
 
 from feedpoint.line import ComplexArray, RealArray, RealLike
 
 
-@dataclass(frozen=True, eq=False)
-class Chain:
+class Chain(NamedTuple):
     """
     Chain matrix of a two-port per frequency: V1 = a V2 + b I2, I1 = c V2 + d I2, with I2 flowing out of port 2 [1]_.
 

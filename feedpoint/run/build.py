@@ -1,9 +1,8 @@
 """From checked tables to sections: every figure resolved, with where it came from."""
 
 from collections.abc import Callable
-from dataclasses import dataclass
 from pathlib import Path
-from typing import Any
+from typing import Any, NamedTuple
 
 from feedpoint.assumed import Assumed, Origin
 from feedpoint.errors import RunRefused, SweepRefused, quoted
@@ -34,8 +33,7 @@ _KEYS_OF_MEASURED = ("open", "short", "load", "load_ohm", "open_capacitance_f", 
 _KIND_OF_KEY = {key: kind for kind, form in _FORMS.items() for key in form.model_fields if key != "name"}
 
 
-@dataclass(frozen=True)
-class Workshop:
+class Workshop(NamedTuple):
     """What the building of a section needs beside its table."""
 
     source: str

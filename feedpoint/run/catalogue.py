@@ -2,11 +2,10 @@
 
 import re
 from collections.abc import Sequence
-from dataclasses import dataclass, field
 from difflib import get_close_matches
 from functools import cache
-from importlib import resources
 from pathlib import Path
+from typing import NamedTuple
 
 from feedpoint.errors import RunRefused, quoted
 from feedpoint.line.loss_fit import fit_loss_law
@@ -21,8 +20,7 @@ BUILT_IN = "built-in catalogue"
 _LOSS_TERMS = ("conductor_loss", "dielectric_loss", "floor_loss")
 
 
-@dataclass(frozen=True, eq=False)
-class CatalogueEntry:
+class CatalogueEntry(NamedTuple):
     """One cable: the high-frequency figures, the points that a source prints, and those sources."""
 
     name: str
@@ -44,11 +42,10 @@ class CatalogueEntry:
         return law
 
 
-@dataclass(frozen=True)
-class Catalogue:
+class Catalogue(NamedTuple):
     """Entries by name; a later one shadows an earlier one of the same name."""
 
-    entries: dict[str, CatalogueEntry] = field(default_factory=dict)
+    entries: dict[str, CatalogueEntry]
 
     def find(self, name: str, source: str, key: str) -> CatalogueEntry:
         """Return the entry of that name, whatever its case, blanks, hyphens and slashes; `RunRefused` if none."""
@@ -77,8 +74,8 @@ def plain_name(name: str) -> str:
 @cache
 def built_in_catalogue() -> Catalogue:
     """Return the catalogue that comes with the package."""
-    text = resources.files("feedpoint.run").joinpath("catalogue.toml").read_text(encoding="utf-8")
-    return Catalogue().extended(parse_catalogue(text, BUILT_IN))
+    text = Path(__file__).with_name("catalogue.toml").read_text(encoding="utf-8")
+    return Catalogue({}).extended(parse_catalogue(text, BUILT_IN))
 
 
 def read_catalogue(path: Path) -> list[CatalogueEntry]:

@@ -1,6 +1,7 @@
 """A run: all that lies between shack end and feed point, with the conditions of the sweep."""
 
 from dataclasses import dataclass, field, replace
+from typing import NamedTuple
 
 from feedpoint.assumed import Assumed
 from feedpoint.errors import RunRefused
@@ -11,8 +12,7 @@ from feedpoint.run.sections import CableSection, Section, SectionTwoPort, Surrou
 COLDEST_C, HOTTEST_C = -100.0, 250.0
 
 
-@dataclass(frozen=True)
-class Band:
+class Band(NamedTuple):
     """A band that matters to the user: from `low_hz` to `high_hz` [Hz], with the SWR that is acceptable there."""
 
     name: str
@@ -21,8 +21,7 @@ class Band:
     swr_limit: float | None = None
 
 
-@dataclass(frozen=True)
-class AnalyzerErrors:
+class AnalyzerErrors(NamedTuple):
     """
     Residual errors of the analyzer after its calibration; None where nothing was stated.
 

@@ -7,7 +7,7 @@ from. `two_port` accepts drawn parameters of shape (T, 1) in place of the nomina
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from typing import Protocol
+from typing import NamedTuple, Protocol
 
 import numpy as np
 
@@ -29,16 +29,14 @@ from feedpoint.units import DECIBELS_PER_NEPER, SECONDS_PER_NANOSECOND, SPEED_OF
 Figures = Mapping[str, Assumed[float] | Assumed[str]]
 
 
-@dataclass(frozen=True, eq=False)
-class Surroundings:
+class Surroundings(NamedTuple):
     """What a section's two-port depends on beside the section: temperature [degrees C], sweep's reference [ohm]."""
 
     temperature_c: RealLike
     reference_ohm: float
 
 
-@dataclass(frozen=True, eq=False)
-class SectionTwoPort:
+class SectionTwoPort(NamedTuple):
     """
     One section at the frequencies of a sweep; arrays (F,) or (T, F).
 
@@ -89,8 +87,7 @@ class CableValues:
     delay_tempco_ppm_per_k: RealLike = 0.0
 
 
-@dataclass(frozen=True)
-class CableTolerances:
+class CableTolerances(NamedTuple):
     """Half-widths of rectangular distributions (JCGM 100:2008, 4.3.7); None where nothing was stated."""
 
     length_m: float | None = None
@@ -106,8 +103,7 @@ class CableTolerances:
         return self != CableTolerances()
 
 
-@dataclass(frozen=True)
-class Ratings:
+class Ratings(NamedTuple):
     """What the maker allows: rms voltage [V], and power [W] at frequencies [Hz]."""
 
     max_voltage_rms_v: float | None = None

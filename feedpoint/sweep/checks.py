@@ -6,7 +6,8 @@ once, with findings about whatever was put right. `Points.values` may hold any n
 one-ports and two-ports pass the same checks.
 """
 
-from dataclasses import dataclass, replace
+
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,8 +22,7 @@ _AGREEMENT = 1e-6
 DOUBTFUL_MAGNITUDE = 1.05
 
 
-@dataclass(frozen=True, eq=False)
-class Points:
+class Points(NamedTuple):
     """Points of a file: frequency (F,) [Hz], values (F, ...), and the line that each came from (F,)."""
 
     frequency_hz: RealArray
@@ -119,4 +119,4 @@ def magnitude_finding(points: Points, source: str) -> list[Finding]:
 
 def reordered(points: Points, values: ComplexArray) -> Points:
     """Return the points with other values (F, ...)."""
-    return replace(points, values=values)
+    return Points(points.frequency_hz, values, points.line)

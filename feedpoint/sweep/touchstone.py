@@ -10,6 +10,7 @@ References: see `feedpoint.sweep.touchstone_header`.
 
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
+from typing import NamedTuple
 
 import numpy as np
 
@@ -38,8 +39,7 @@ from feedpoint.sweep.touchstone_records import BLANKS, Records, parse_records
 _PLAIN_OHM_RATIO = 10.0
 
 
-@dataclass(frozen=True, eq=False)
-class NetworkData:
+class NetworkData(NamedTuple):
     """
     Content of a Touchstone file: scattering parameters (F, n, n) against the references (n,) [ohm] of n ports.
 

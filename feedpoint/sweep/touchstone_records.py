@@ -4,6 +4,7 @@ import re
 from collections.abc import Iterable
 from dataclasses import dataclass, field
 from math import inf, isinf
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,8 +22,7 @@ _COLUMNS = {"RI": "real, imaginary", "MA": "magnitude, angle", "DB": "dB, angle"
 _NOISE_NUMBERS = 5
 
 
-@dataclass(frozen=True, eq=False)
-class Records:
+class Records(NamedTuple):
     """Frequencies (F,) [Hz], values (F, n, n) as in the file, line of each record (F,), first line of noise data."""
 
     frequency_hz: RealArray
