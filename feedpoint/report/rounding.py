@@ -10,6 +10,7 @@ from itertools import pairwise
 from math import ceil, isinf, isnan, log10
 
 NOTHING = "-"
+_HALF_A_HERTZ = 0.5
 
 
 def shown(value: float | None) -> str:
@@ -26,11 +27,19 @@ def shown(value: float | None) -> str:
 
 
 def frequency_decimals(frequencies_hz: Sequence[float]) -> int:
-    """Return how many decimals of a frequency in MHz show a tenth of the smallest step between rising frequencies."""
+    """
+    Return how many decimals show rising frequencies in MHz: a tenth of their smallest step, or as many as they have.
+
+    Frequencies that never end (a range cut in 137 steps) are cut at 100 Hz, unless their step is finer.
+    """
     steps = [after - before for before, after in pairwise(frequencies_hz)]
-    if not steps:
-        return 3
-    return min(max(ceil(-log10(min(steps) / 1e6)) + 1, 2), 6)
+    for_steps = min(ceil(-log10(min(steps) / 1e6)) + 1, 6) if steps else 0
+    exact = (
+        decimals
+        for decimals in range(2, 4)
+        if all(abs(round(hertz / 1e6, decimals) * 1e6 - hertz) < _HALF_A_HERTZ for hertz in frequencies_hz)
+    )
+    return max(for_steps, next(exact, 4))
 
 
 def megahertz(frequency_hz: float, decimals: int) -> str:

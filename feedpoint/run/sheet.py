@@ -66,16 +66,6 @@ def parse_run_sheet(
     )
 
 
-def read_analyzer(path: str | Path) -> AnalyzerErrors:
-    """Read a file that holds an `[analyzer]` table of its own; `RunRefused` names file and key."""
-    source = str(path)
-    tables = parse_toml(decoded(read_bytes(Path(path), RunRefused), source, RunRefused), source)
-    refuse_unknown_keys(tables, ("analyzer",), source, "")
-    if "analyzer" not in tables:
-        raise RunRefused("no [analyzer] table; expected one.", source=source)
-    return analyzer_errors(tables["analyzer"], source)
-
-
 def run_of_section(table: dict[str, Any], *, cables_file: str | Path | None = None) -> Run:
     """
     Return the run of one section that is described by options instead of a sheet; the keys are the sheet's.

@@ -85,9 +85,11 @@ def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkDat
     """
     sections = _split(text, source, ports)
     header = sections.header
-    _check_header(header, ports)
+    _check_header(header, ports, sections.lines)
     assert header.options is not None
     references = references_ohm(header, sections.reference_lines)
+    if not sections.data:
+        raise header.refuse("no data points; expected at least one.", sections.lines)
     records = parse_records(header, sections.data)
     scattering = _scattering(header, header.options, references, records)
     points, findings = in_order(Points(records.frequency_hz, scattering, records.line), source)
@@ -112,7 +114,9 @@ def _split(text: str, source: str, ports: int | None) -> _Sections:
     content = _without_comments(lines, sections.comments)
     first = next(content, None)
     if first is None:
-        raise sections.header.refuse("no data; expected an option line such as '# MHz S RI R 50' and data points.")
+        raise sections.header.refuse(
+            "no data; expected an option line such as '# MHz S RI R 50' and data points.", len(lines)
+        )
     if first[1].startswith("["):
         sections.header.version = parse_version(sections.header, *first)
         _split_version_2(sections, content)
@@ -199,20 +203,21 @@ def _next_place(header: Header, number: int, line: str, place: str) -> str:
     return places.get(keyword, "header")
 
 
-def _check_header(header: Header, ports_of_name: int | None) -> None:
-    """Refuse a file whose header lacks what its numbers need to be understood."""
+def _check_header(header: Header, ports_of_name: int | None, last_line: int) -> None:
+    """Refuse a file whose header lacks what its numbers need to be understood, at the line where it is missed."""
     if header.options is None:
-        raise header.refuse("no option line; expected a line such as '# MHz S RI R 50' before the data.")
+        raise header.refuse("no option line; expected a line such as '# MHz S RI R 50' before the data.", last_line)
     if not header.is_version_2:
         if ports_of_name is None:
-            raise header.refuse("no [Version] line; expected '[Version] 2.0' first in a .ts file.")
+            raise header.refuse("no [Version] line; expected '[Version] 2.0' first in a .ts file.", 1)
         return
+    missed = header.keywords.get("network data", (last_line, ""))[0]
     required = ["number of ports", "number of frequencies", "network data"]
     required += ["two-port data order"] if header.ports == 2 else []
     for keyword in required:
         if keyword not in header.keywords:
             name = "[" + keyword.title().replace("Of", "of") + "]"
-            raise header.refuse(f"{name} is missing; version {header.version} of the format requires it.")
+            raise header.refuse(f"{name} is missing; version {header.version} of the format requires it.", missed)
 
 
 def _scattering(header: Header, options: Options, references: RealArray, records: Records) -> ComplexArray:

@@ -49,8 +49,6 @@ def parse_records(header: Header, data: Iterable[tuple[int, str]]) -> Records:
         records that is not [Number of Frequencies].
     """
     collected = _collect(header, data)
-    if not collected.numbers:
-        raise header.refuse("no data points; expected at least one.")
     stated = header.argument("number of frequencies")
     if stated is not None and int(stated) != len(collected.numbers):
         raise header.refuse(

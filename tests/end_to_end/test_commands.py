@@ -14,7 +14,7 @@ import numpy as np
 import pytest
 
 from feedpoint.result import COLUMNS, INSPECT_COLUMNS
-from tests.end_to_end.command import assert_refused, start_feedpoint
+from tests.end_to_end.command import assert_refused, run_feedpoint, start_feedpoint
 
 SHEET = """
 [run]
@@ -43,7 +43,7 @@ def place(tmp_path):
 
 
 def test_table_fits_80_columns_and_says_what_it_leaves_out(place):
-    process = start_feedpoint("deembed", "a.s1p", "--run", "run.toml", cwd=place)
+    process = run_feedpoint("deembed", "a.s1p", "--run", "run.toml", cwd=place)
     assert process.returncode == 0
     lines = process.stdout.splitlines()
     assert max(map(len, lines)) <= 80
@@ -55,13 +55,13 @@ def test_table_fits_80_columns_and_says_what_it_leaves_out(place):
 
 
 def test_all_shows_every_row(place):
-    process = start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--all", cwd=place)
+    process = run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--all", cwd=place)
     assert len(process.stdout.splitlines()) > 201
     assert "telling" not in process.stdout
 
 
 def test_csv_has_the_fixed_columns_all_points_and_full_precision(place):
-    process = start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--format", "csv", cwd=place)
+    process = run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--format", "csv", cwd=place)
     rows = list(csv.reader(io.StringIO(process.stdout)))
     assert tuple(rows[0]) == COLUMNS
     assert len(rows) == 202
@@ -79,8 +79,8 @@ def no_nan(text):
 
 def test_json_is_the_envelope_and_equals_csv(place):
     arguments = ("deembed", "a.s1p", "--run", "run.toml", "--from", "14MHz", "--to", "14.1MHz")
-    envelope = no_nan(start_feedpoint(*arguments, "--format", "json", cwd=place).stdout)
-    rows = list(csv.DictReader(io.StringIO(start_feedpoint(*arguments, "--format", "csv", cwd=place).stdout)))
+    envelope = no_nan(run_feedpoint(*arguments, "--format", "json", cwd=place).stdout)
+    rows = list(csv.DictReader(io.StringIO(run_feedpoint(*arguments, "--format", "csv", cwd=place).stdout)))
     assert list(envelope) == ["sweep", "run", "summary", "points", "findings"]
     assert len(rows) == len(envelope["points"]) == 11
     for row, point in zip(rows, envelope["points"], strict=True):
@@ -97,12 +97,12 @@ def test_json_is_the_envelope_and_equals_csv(place):
 def test_infinite_is_inf_in_csv_and_null_in_json(place):
     reading = ("deembed", "--reading", "open@14.2MHz", "--z0", "50ohm", "--velocity-factor", "0.66")
     line = (*reading, "--loss-at", "10MHz:2dB/100m", "--length", "0m")
-    (row,) = csv.DictReader(io.StringIO(start_feedpoint(*line, "--format", "csv", cwd=place).stdout))
+    (row,) = csv.DictReader(io.StringIO(run_feedpoint(*line, "--format", "csv", cwd=place).stdout))
     assert row["feedpoint_resistance_ohm"] == "inf"
     assert row["feedpoint_reactance_ohm"] == "0.0"
     assert row["feedpoint_swr"] == "inf"
     assert row["total_loss_db"] == ""
-    (point,) = no_nan(start_feedpoint(*line, "--format", "json", cwd=place).stdout)["points"]
+    (point,) = no_nan(run_feedpoint(*line, "--format", "json", cwd=place).stdout)["points"]
     assert point["feedpoint_resistance_ohm"] is None
     assert point["feedpoint_swr"] is None
 
@@ -110,33 +110,33 @@ def test_infinite_is_inf_in_csv_and_null_in_json(place):
 def test_several_sweeps(place):
     (place / "b.s1p").write_bytes((place / "a.s1p").read_bytes())
     both = ("deembed", "a.s1p", "b.s1p", "--run", "run.toml")
-    rows = list(csv.reader(io.StringIO(start_feedpoint(*both, "--format", "csv", cwd=place).stdout)))
+    rows = list(csv.reader(io.StringIO(run_feedpoint(*both, "--format", "csv", cwd=place).stdout)))
     assert rows[0] == ["sweep", *COLUMNS]
     assert [row[0] for row in rows[1:]] == ["a.s1p"] * 201 + ["b.s1p"] * 201
-    envelopes = no_nan(start_feedpoint(*both, "--format", "json", cwd=place).stdout)
+    envelopes = no_nan(run_feedpoint(*both, "--format", "json", cwd=place).stdout)
     assert [envelope["sweep"]["source"] for envelope in envelopes] == ["a.s1p", "b.s1p"]
-    assert start_feedpoint(*both, cwd=place).stdout.count("telling rows") == 2
+    assert run_feedpoint(*both, cwd=place).stdout.count("telling rows") == 2
 
 
 def test_inspect(place):
-    process = start_feedpoint("inspect", "a.s1p", "--format", "csv", cwd=place)
+    process = run_feedpoint("inspect", "a.s1p", "--format", "csv", cwd=place)
     rows = list(csv.DictReader(io.StringIO(process.stdout)))
     assert tuple(rows[0]) == INSPECT_COLUMNS
     gamma = 0.6 * np.exp(-2e-6j * 13e6) + 0.1j
     assert float(rows[0]["shack_gamma_magnitude"]) == pytest.approx(abs(gamma), abs=1e-8)
     swr = (1 + abs(gamma)) / (1 - abs(gamma))
     assert float(rows[0]["shack_swr_db"]) == pytest.approx(20 * math.log10(swr), abs=1e-6)
-    text = start_feedpoint("inspect", "a.s1p", cwd=place).stdout
+    text = run_feedpoint("inspect", "a.s1p", cwd=place).stdout
     assert "Touchstone" in text
     assert "made up for a test" in text
     assert max(map(len, text.splitlines())) <= 80
-    assert no_nan(start_feedpoint("inspect", "a.s1p", "--format", "json", cwd=place).stdout)["run"] is None
+    assert no_nan(run_feedpoint("inspect", "a.s1p", "--format", "json", cwd=place).stdout)["run"] is None
 
 
 def test_embed_and_deembed_by_files_is_identity(place):
-    embed = start_feedpoint("embed", "a.s1p", "--run", "run.toml", "--out", "shack.s1p", cwd=place)
+    embed = run_feedpoint("embed", "a.s1p", "--run", "run.toml", "--out", "shack.s1p", cwd=place)
     assert "wrote 201 rows to shack.s1p" in embed.stdout
-    back = start_feedpoint("deembed", "shack.s1p", "--run", "run.toml", "--out", "back.csv", cwd=place)
+    back = run_feedpoint("deembed", "shack.s1p", "--run", "run.toml", "--out", "back.csv", cwd=place)
     assert back.returncode == 0
     rows = list(csv.DictReader(io.StringIO((place / "back.csv").read_text(encoding="utf-8"))))
     frequency = np.array([float(row["frequency_hz"]) for row in rows])
@@ -148,38 +148,38 @@ def test_embed_and_deembed_by_files_is_identity(place):
 def test_out_replaces_a_file_whole_and_leaves_no_temporary_one(place):
     (place / "x.json").write_text("old", encoding="ascii")
     before = set(os.listdir(place))
-    assert start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--out", "x.json", cwd=place).returncode == 0
+    assert run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--out", "x.json", cwd=place).returncode == 0
     assert len(no_nan((place / "x.json").read_text(encoding="utf-8"))["points"]) == 201
     assert set(os.listdir(place)) == before
 
 
 def test_output_that_cannot_be_written_is_refused(place):
-    process = start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--out", "no/such/folder.csv", cwd=place)
+    process = run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--out", "no/such/folder.csv", cwd=place)
     assert_refused(process, "folder.csv", "cannot be written")
 
 
 def test_strict_exits_with_4_on_an_error_and_prints_all_the_same(place):
     (place / "over.s1p").write_text("# MHz S RI R 50\n14 1.03 0\n", encoding="ascii")
-    process = start_feedpoint("deembed", "over.s1p", "--run", "run.toml", "--strict", cwd=place)
+    process = run_feedpoint("deembed", "over.s1p", "--run", "run.toml", "--strict", cwd=place)
     assert process.returncode == 4
     assert "minimum SWR" in process.stdout
     assert "error reflection-above-unity" in process.stderr
-    assert start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--strict", cwd=place).returncode == 0
-    assert start_feedpoint("deembed", "over.s1p", "--run", "run.toml", "--quiet", cwd=place).stderr == ""
+    assert run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--strict", cwd=place).returncode == 0
+    assert run_feedpoint("deembed", "over.s1p", "--run", "run.toml", "--quiet", cwd=place).stderr == ""
 
 
 def test_temperature_option_overrides_the_sheet_and_says_so(place):
-    warm = start_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--temperature", "95F", cwd=place).stdout
+    warm = run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--temperature", "95F", cwd=place).stdout
     assert "cable temperature 35 C [option]" in warm
 
 
 def test_hostile_names_are_shown_as_they_are_on_one_line(place):
     name = "roof[old] \x1b[31m.s1p"
     (place / name).write_bytes((place / "a.s1p").read_bytes())
-    process = start_feedpoint("deembed", name, "--run", "run.toml", cwd=place)
+    process = run_feedpoint("deembed", name, "--run", "run.toml", cwd=place)
     assert "roof[old] \\x1b[31m.s1p" in process.stdout
     assert "\x1b" not in process.stdout
-    assert_refused(start_feedpoint("deembed", "gone\n[x].s1p", "--run", "run.toml", cwd=place), "gone\\n[x].s1p")
+    assert_refused(run_feedpoint("deembed", "gone\n[x].s1p", "--run", "run.toml", cwd=place), "gone\\n[x].s1p")
 
 
 def test_pipe_that_closes_early_is_no_traceback(place):
@@ -209,3 +209,15 @@ def test_interrupt_is_no_traceback(place):
 def test_help_and_version():
     assert "Exit codes" in start_feedpoint("--help").stdout
     assert start_feedpoint("--version").stdout.startswith("feedpoint ")
+
+
+@pytest.mark.parametrize("form", ["table", "csv", "json"])
+def test_started_by_a_shell_the_command_does_the_same(place, form):
+    """Most tests fork the command; this one holds the fork against a real start."""
+    arguments = ("deembed", "a.s1p", "--run", "run.toml", "--format", form)
+    forked, started = run_feedpoint(*arguments, cwd=place), start_feedpoint(*arguments, cwd=place)
+    assert (started.returncode, started.stdout, started.stderr) == (forked.returncode, forked.stdout, forked.stderr)
+
+
+def test_refusal_of_a_started_command(place):
+    assert_refused(start_feedpoint("deembed", "gone.s1p", "--run", "run.toml", cwd=place), "gone.s1p", "no such file")
