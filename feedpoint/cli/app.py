@@ -2,6 +2,7 @@
 
 import os
 import sys
+from io import TextIOWrapper
 from typing import Annotated
 
 import typer
@@ -48,6 +49,10 @@ def main() -> None:
     """Run the command; a refusal is one line on stderr, never a traceback."""
     # Nobody else's package has a say in how a run sheet is read; looking for such plugins takes 15 ms besides.
     os.environ["PYDANTIC_DISABLE_PLUGINS"] = "__all__"
+    for stream in (sys.stdout, sys.stderr):
+        # A file name or comment may hold what the terminal's encoding does not.
+        if isinstance(stream, TextIOWrapper):
+            stream.reconfigure(errors="backslashreplace")
     try:
         app()
     except FeedpointError as refusal:

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import sys
 import time
 from collections.abc import Callable, Iterable, Iterator, Sequence
+from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -16,7 +18,7 @@ if TYPE_CHECKING:
     from feedpoint.result import FeedpointResult
     from feedpoint.sweep.record import Sweep
 
-_PROGRESS_AFTER_S = 1.0
+PROGRESS_AFTER_S = 1.0
 
 
 def _command(direction: str, description: str) -> Callable[..., None]:
@@ -93,12 +95,12 @@ def _sources(
     if readings:
         if port is not None:
             raise WrongUsage("--port belongs to a sweep file, not to --reading.")
-        return [lambda: sweep_of_readings(readings, reference or 50.0)]
+        return [partial(sweep_of_readings, readings, reference or 50.0)]
     if reference is not None:
         raise WrongUsage("--reference belongs to --reading; a Touchstone file states its own.")
     if not paths:
         raise WrongUsage("nothing to work on; name a sweep file, or use --reading '17.8-22j@14.2MHz'.")
-    return [lambda path=path: read_sweep(path, port=port) for path in paths]  # type: ignore[misc]
+    return [partial(read_sweep, path, port=port) for path in paths]
 
 
 def _results(
@@ -114,8 +116,6 @@ def _results(
 
 def _with_progress(items: Sequence[_Read], what: str, quiet: bool) -> Iterable[_Read]:
     """Yield the items, with a progress bar on a terminal once they have taken more than a second."""
-    import sys
-
     if quiet or len(items) < 2 or not sys.stderr.isatty():
         return items
     return _progressing(items, what)
@@ -130,7 +130,7 @@ def _progressing(items: Sequence[_Read], what: str) -> Iterator[_Read]:
     task = progress.add_task(what, total=len(items))
     try:
         for done, item in enumerate(items):
-            if time.monotonic() - started > _PROGRESS_AFTER_S and not progress.live.is_started:
+            if time.monotonic() - started > PROGRESS_AFTER_S and not progress.live.is_started:
                 progress.start()
             progress.update(task, completed=done)
             yield item

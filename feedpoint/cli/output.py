@@ -10,7 +10,7 @@ from typing import TYPE_CHECKING, NamedTuple
 import typer
 
 from feedpoint.cli.options import Format, frequencies_hz
-from feedpoint.errors import WrongUsage, quoted
+from feedpoint.errors import WrongUsage, one_line, quoted
 
 if TYPE_CHECKING:
     from feedpoint.report.lines import Line
@@ -103,7 +103,7 @@ def _write_file(
     write_whole(out, _file_text(form, results, rows, presentation))
     lines = [line for result in results for line in presentation.summary(result)]
     count = sum(len(chosen.saved_gamma) for chosen in rows)
-    show([*lines, Line(f"wrote {count} rows to {out}")])
+    show([*lines, Line(one_line(f"wrote {count} rows to {out}"))])
 
 
 def _file_text(

@@ -43,7 +43,7 @@ def _cells(values: list[float]) -> list[str]:
 def json_text(envelopes: Sequence[Any]) -> str:
     """Return one envelope, or the list of several, as JSON."""
     content = envelopes[0] if len(envelopes) == 1 else list(envelopes)
-    return json.dumps(content, indent=1, allow_nan=False, ensure_ascii=False) + "\n"
+    return json.dumps(content, indent=1, allow_nan=False) + "\n"
 
 
 def one_port_text(result: FeedpointResult, rows: Rows, *, inspecting: bool = False) -> str:
@@ -102,7 +102,7 @@ def write_whole(path: Path, text: str) -> None:
     try:
         handle, temporary = tempfile.mkstemp(prefix=".feedpoint-", dir=path.parent)
         try:
-            with os.fdopen(handle, "w", encoding="utf-8", newline="") as file:
+            with os.fdopen(handle, "w", encoding="utf-8", errors="backslashreplace", newline="") as file:
                 file.write(text)
             os.chmod(temporary, 0o666 & ~_umask())
             os.replace(temporary, path)

@@ -27,7 +27,6 @@ from feedpoint.sweep.checks import Points, in_order
 from feedpoint.sweep.text import numbered_lines
 from feedpoint.sweep.touchstone_header import (
     Header,
-    Options,
     parse_option_line,
     parse_version,
     references_ohm,
@@ -86,14 +85,13 @@ def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkDat
     sections = _split(text, source, ports)
     header = sections.header
     _check_header(header, ports, sections.lines)
-    assert header.options is not None
     references = references_ohm(header, sections.reference_lines)
     if not sections.data:
         raise header.refuse("no data points; expected at least one.", sections.lines)
     records = parse_records(header, sections.data)
-    scattering = _scattering(header, header.options, references, records)
+    scattering = _scattering(header, references, records)
     points, findings = in_order(Points(records.frequency_hz, scattering, records.line), source)
-    doubts = sections.doubts + _doubts_about_values(header, header.options, records)
+    doubts = sections.doubts + _doubts_about_values(header, records)
     if not header.options.unit_stated:
         doubts.append("the option line names no frequency unit: the standard's GHz was taken")
     # A text that ends with a line end has an empty last line.
@@ -110,7 +108,7 @@ def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkDat
 def _split(text: str, source: str, ports: int | None) -> _Sections:
     """Sort the lines of a file into header, comments and data."""
     lines = numbered_lines(text)
-    sections = _Sections(Header(source, ports=ports), lines=len(lines))
+    sections = _Sections(Header(source, ports), lines=len(lines))
     content = _without_comments(lines, sections.comments)
     first = next(content, None)
     if first is None:
@@ -141,7 +139,7 @@ def _split_version_1(sections: _Sections, content: Iterable[tuple[int, str]]) ->
             raise header.refuse(f"keyword {quoted(line)} in a file without [Version] as its first line.", number)
         if line.startswith("#"):
             _take_options(header, number, line)
-        elif header.options is None:
+        elif header.stated_options is None:
             raise header.refuse(
                 f"data before any option line: {quoted(line)}; expected a line such as '# MHz S RI R 50' that says the "
                 "unit, kind and format of the numbers.",
@@ -153,11 +151,11 @@ def _split_version_1(sections: _Sections, content: Iterable[tuple[int, str]]) ->
 
 def _take_options(header: Header, number: int, line: str) -> None:
     options = parse_option_line(header, number, line)
-    if header.options is not None and header.options != options:
+    if header.stated_options not in (None, options):
         raise header.refuse(
             f"a second option line, {quoted(line)}, contradicts the first; expected one. Were two files joined?", number
         )
-    header.options = options
+    header.stated_options = options
 
 
 def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) -> None:
@@ -176,9 +174,9 @@ def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) ->
             place = _next_place(header, number, line, place)
             sections.noise_line = number if place == "noise" else sections.noise_line
         elif line.startswith("#") and place == "header":
-            if header.options is not None:
+            if header.stated_options is not None:
                 raise header.refuse("a second option line; expected one.", number)
-            header.options = parse_option_line(header, number, line)
+            header.stated_options = parse_option_line(header, number, line)
         elif place == "data":
             sections.data.append((number, line))
         elif place == "reference":
@@ -197,7 +195,7 @@ def _next_place(header: Header, number: int, line: str, place: str) -> str:
     after_data = place in ("data", "noise")
     if after_data != (keyword in ("noise data", "end")):
         raise header.refuse(f"{quoted(line)} stands {'after' if after_data else 'before'} the network data.", number)
-    if header.options is None:
+    if header.stated_options is None:
         raise header.refuse(f"{quoted(line)} before the option line; expected '# ...' after [Version].", number)
     places = {"network data": "data", "noise data": "noise", "end": "end", "reference": "reference"}
     return places.get(keyword, "header")
@@ -205,7 +203,7 @@ def _next_place(header: Header, number: int, line: str, place: str) -> str:
 
 def _check_header(header: Header, ports_of_name: int | None, last_line: int) -> None:
     """Refuse a file whose header lacks what its numbers need to be understood, at the line where it is missed."""
-    if header.options is None:
+    if header.stated_options is None:
         raise header.refuse("no option line; expected a line such as '# MHz S RI R 50' before the data.", last_line)
     if not header.is_version_2:
         if ports_of_name is None:
@@ -213,33 +211,33 @@ def _check_header(header: Header, ports_of_name: int | None, last_line: int) -> 
         return
     missed = header.keywords.get("network data", (last_line, ""))[0]
     required = ["number of ports", "number of frequencies", "network data"]
-    required += ["two-port data order"] if header.ports == 2 else []
+    required += ["two-port data order"] if header.stated_ports == 2 else []
     for keyword in required:
         if keyword not in header.keywords:
             name = "[" + keyword.title().replace("Of", "of") + "]"
             raise header.refuse(f"{name} is missing; version {header.version} of the format requires it.", missed)
 
 
-def _scattering(header: Header, options: Options, references: RealArray, records: Records) -> ComplexArray:
+def _scattering(header: Header, references: RealArray, records: Records) -> ComplexArray:
     """Scattering parameters (F, n, n); version-1 Z and Y are normalised to R already, version-2 ones are not."""
-    values = records.values
-    if options.parameter == "Z":
+    values, parameter = records.values, header.options.parameter
+    if parameter == "Z":
         if header.is_version_2:
             values = normalised_impedance(values, references)
         values = scattering_from_normalised_impedance(values)
-    elif options.parameter == "Y":
+    elif parameter == "Y":
         if header.is_version_2:
             values = normalised_admittance(values, references)
         values = scattering_from_normalised_admittance(values)
     infinite = ~np.isfinite(values).all(axis=(1, 2))
     if np.any(infinite):
         line = int(records.line[np.argmax(infinite)])
-        raise header.refuse(f"this {options.parameter} value has no finite reflection.", line)
+        raise header.refuse(f"this {parameter} value has no finite reflection.", line)
     return values
 
 
-def _doubts_about_values(header: Header, options: Options, records: Records) -> list[str]:
-    if header.is_version_2 or options.parameter != "Z" or options.reference_ohm == 1.0:
+def _doubts_about_values(header: Header, records: Records) -> list[str]:
+    if header.is_version_2 or header.options.parameter != "Z" or header.options.reference_ohm == 1.0:
         return []
     resistance = float(np.median(records.values[:, 0, 0].real))
     if resistance < _PLAIN_OHM_RATIO:
@@ -251,8 +249,6 @@ def _doubts_about_values(header: Header, options: Options, records: Records) -> 
 
 
 def _understood(header: Header) -> dict[str, str | int | float]:
-    assert header.options is not None
-    assert header.ports is not None
     return {
         "format": "Touchstone",
         "version": "1.x" if not header.is_version_2 else header.version,

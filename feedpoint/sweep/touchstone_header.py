@@ -61,10 +61,22 @@ class Header:
     """Everything that the data section's meaning depends on."""
 
     source: str
+    stated_ports: int | None
     version: str = "1"
-    ports: int | None = None
-    options: Options | None = None
+    stated_options: Options | None = None
     keywords: dict[str, tuple[int, str]] = field(default_factory=dict)
+
+    @property
+    def ports(self) -> int:
+        """Number of ports; the header has been checked to state it."""
+        assert self.stated_ports is not None
+        return self.stated_ports
+
+    @property
+    def options(self) -> Options:
+        """The option line; the header has been checked to have one."""
+        assert self.stated_options is not None
+        return self.stated_options
 
     @property
     def is_version_2(self) -> bool:
@@ -156,12 +168,13 @@ def _take_ports(header: Header, line: int, argument: str) -> None:
     ports = whole_number(header, line, argument, "[Number of Ports]")
     if ports > MOST_PORTS:
         raise header.refuse(f"[Number of Ports] is {ports}; expected at most {MOST_PORTS}.", line)
-    if header.ports is not None and header.ports != ports:
+    if header.stated_ports not in (None, ports):
         raise header.refuse(
-            f"[Number of Ports] is {ports} but the file name says {header.ports}; expected the same. Rename the file.",
+            f"[Number of Ports] is {ports} but the file name says {header.stated_ports}; expected the same. "
+            "Rename the file.",
             line,
         )
-    header.ports = ports
+    header.stated_ports = ports
 
 
 def parse_version(header: Header, line: int, text: str) -> str:
@@ -182,8 +195,6 @@ def references_ohm(header: Header, continued: list[tuple[int, str]]) -> RealArra
 
     Version 2 may state them with [Reference], on the keyword's line or (`continued`) on the lines after it.
     """
-    assert header.options is not None
-    assert header.ports is not None
     if "reference" not in header.keywords:
         return np.full(header.ports, header.options.reference_ohm)
     line, argument = header.keywords["reference"]

@@ -58,7 +58,6 @@ def parse_records(header: Header, data: Iterable[tuple[int, str]]) -> Records:
     table = np.array(collected.numbers)
     line = np.array(collected.line)
     values = _complex_values(header, table[:, 1::2], table[:, 2::2], line)
-    assert header.options is not None
     with np.errstate(over="ignore"):
         frequency_hz = table[:, 0] * header.options.unit_hz
     if not np.all(np.isfinite(frequency_hz)):
@@ -106,7 +105,6 @@ def _is_noise(header: Header, numbers: list[float], collected: _Collected) -> bo
 
 
 def _wrong_count(header: Header, collected: _Collected, expected: int, texts: dict[int, str]) -> Exception:
-    assert header.options is not None
     line, found = collected.line[-1], len(collected.numbers[-1])
     pairs = _values_per_record(header)
     columns = f"frequency, {'' if pairs == 1 else f'{pairs} times '}{_COLUMNS[header.options.number_format]}"
@@ -129,13 +127,11 @@ def _numbers(header: Header, line: int, text: str) -> list[float]:
 
 
 def _values_per_record(header: Header) -> int:
-    assert header.ports is not None
     triangular = (header.argument("matrix format") or "full").lower() != "full"
     return header.ports * (header.ports + 1) // 2 if triangular else header.ports**2
 
 
 def _complex_values(header: Header, first: RealArray, second: RealArray, line: NDArray[np.intp]) -> ComplexArray:
-    assert header.options is not None
     if header.options.number_format == "MA" and np.any(first < 0):
         at = int(line[np.argmax((first < 0).any(axis=1))])
         raise header.refuse("a negative magnitude; expected 0 or more. Are the numbers real and imaginary (RI)?", at)
@@ -166,7 +162,6 @@ def _unit_phasor(angle_deg: RealArray) -> ComplexArray:
 def _matrices(header: Header, values: ComplexArray) -> ComplexArray:
     """Values of the records (F, count) in their places of the matrices (F, n, n)."""
     ports = header.ports
-    assert ports is not None
     layout = (header.argument("matrix format") or "full").lower()
     result = np.empty((values.shape[0], ports, ports), dtype=complex)
     if layout == "full":

@@ -14,7 +14,7 @@ import numpy as np
 import pytest
 
 from feedpoint.result import COLUMNS, INSPECT_COLUMNS
-from tests.end_to_end.command import assert_refused, run_feedpoint, start_feedpoint
+from tests.end_to_end.command import REPOSITORY, assert_refused, run_feedpoint, start_feedpoint
 
 SHEET = """
 [run]
@@ -180,6 +180,18 @@ def test_hostile_names_are_shown_as_they_are_on_one_line(place):
     assert "roof[old] \\x1b[31m.s1p" in process.stdout
     assert "\x1b" not in process.stdout
     assert_refused(run_feedpoint("deembed", "gone\n[x].s1p", "--run", "run.toml", cwd=place), "gone\\n[x].s1p")
+
+
+@pytest.mark.parametrize("form", ["table", "csv", "json"])
+def test_names_that_no_encoding_holds_are_escaped(place, form):
+    os.rename(os.fsencode(place / "a.s1p"), os.fsencode(place) + b"/\xff\xce\xa9.s1p")
+    name = os.fsdecode(b"\xff\xce\xa9.s1p")
+    shell = [sys.executable, "-m", "feedpoint", "deembed", name, name, "--run", "run.toml", "--format", form]
+    ascii_only = {"PATH": os.environ["PATH"], "PYTHONIOENCODING": "ascii", "PYTHONPATH": str(REPOSITORY)}
+    process = subprocess.run(shell, cwd=place, capture_output=True, timeout=60, check=True, env=ascii_only)
+    assert b"udcff" in process.stdout
+    file = f"x.{form}".replace("table", "s1p")
+    assert run_feedpoint("deembed", name, "--run", "run.toml", "--out", file, cwd=place).returncode == 0
 
 
 def test_pipe_that_closes_early_is_no_traceback(place):

@@ -3,7 +3,6 @@
 import os
 import sys
 
-import numpy as np
 import pytest
 
 from tests.end_to_end.command import REPOSITORY
@@ -11,13 +10,13 @@ from tests.end_to_end.command import REPOSITORY
 pty = pytest.importorskip("pty", reason="needs a system with pseudo-terminals")
 
 
-def on_a_terminal(*args, cwd, **environment):
-    """What the command writes to a terminal of 80 columns."""
+def on_a_terminal(*args, cwd, code="from feedpoint.cli.app import main; main()", **environment):
+    """What the command writes to a terminal of 80 columns; `code` starts it."""
     pid, terminal = pty.fork()
     if pid == 0:
         os.chdir(cwd)
         kept = {"PATH": os.environ["PATH"], "PYTHONPATH": str(REPOSITORY), "TERM": "xterm-256color", "COLUMNS": "80"}
-        os.execve(sys.executable, [sys.executable, "-m", "feedpoint", *map(str, args)], kept | environment)
+        os.execve(sys.executable, [sys.executable, "-c", code, *map(str, args)], kept | environment)
     written = b""
     while True:
         try:
@@ -52,16 +51,12 @@ def test_no_color_is_honoured(place):
     assert "\x1b" not in on_a_terminal("deembed", "a.s1p", "--run", "run.toml", cwd=place, NO_COLOR="1")
 
 
-def test_progress_bar_only_when_it_takes_longer_than_a_second(place):
-    frequency = np.linspace(1e6, 2e6, 60_000)
-    rows = "".join(f"{f:.2f} 0.5 0.1\n" for f in frequency)
-    names = [f"s{number}.s1p" for number in range(12)]
-    for name in names:
-        (place / name).write_text("# Hz S RI R 50\n" + rows, encoding="ascii")
-    # About 0.2 s for each sweep: two are done before a second has passed, twelve are not.
-    many = on_a_terminal("deembed", *names, "--run", "run.toml", "--at", "1MHz", cwd=place)
-    assert "sweeps" in many
-    assert "%" in many
-    quiet = on_a_terminal("deembed", *names, "--run", "run.toml", "--at", "1MHz", "--quiet", cwd=place)
-    assert "%" not in quiet
-    assert "%" not in on_a_terminal("deembed", "a.s1p", "a.s1p", "--run", "run.toml", cwd=place)
+def test_progress_bar_of_several_sweeps_that_take_long(place):
+    long = "import feedpoint.cli.carry as carry; carry.PROGRESS_AFTER_S = {}; from feedpoint.cli.app import main; main()"
+    three = ("deembed", "a.s1p", "a.s1p", "a.s1p", "--run", "run.toml")
+    slow = on_a_terminal(*three, cwd=place, code=long.format(-1.0))
+    assert "sweeps" in slow
+    assert "%" in slow
+    assert "%" not in on_a_terminal(*three, "--quiet", cwd=place, code=long.format(-1.0))
+    assert "%" not in on_a_terminal(*three, cwd=place, code=long.format(60.0))
+    assert "%" not in on_a_terminal(three[0], three[1], *three[-2:], cwd=place, code=long.format(-1.0))
