@@ -27,6 +27,11 @@ _NARROWEST_STRIP = 1e-12
 # A band edge that differs from the sweep's end by rounding lies on it.
 _SAME_FREQUENCY = 1e-9
 
+# Stands for an infinite reflection (an impedance of exactly minus the reference), which no polynomial goes through.
+_BEYOND_ALL = 1e6
+# Roots that rounding has put just outside their interval lie on its end.
+_ON_THE_END = 1e-9
+
 ResonanceKind = Literal["series", "parallel"]
 
 
@@ -75,6 +80,7 @@ def landmarks_of(
         The same reflection against the resistance that SWR refers to.
     bands : bands to look into
     """
+    gamma, swr_gamma = (np.where(np.isfinite(values), values, _BEYOND_ALL) for values in (gamma, swr_gamma))
     curve = _Curve(frequency_hz, swr_gamma)
     low, high = float(frequency_hz[0]), float(frequency_hz[-1])
     minimum_hz, minimum = curve.extreme(low, high, np.argmin)
@@ -190,7 +196,8 @@ def real_roots(polynomial: RealArray, low: float, high: float) -> list[float]:
     roots = np.roots(np.where(significant, polynomial, 0.0))
     # Roots of a companion matrix of degree <= 6 are good to about 1e-8 where two of them meet.
     real = roots.real[np.abs(roots.imag) < 1e-7]
-    return sorted(float(root) for root in real if low <= root <= high)
+    inside = real[(real >= low - _ON_THE_END) & (real <= high + _ON_THE_END)]
+    return sorted(np.clip(inside, low, high).tolist())
 
 
 def _resonances(frequency_hz: RealArray, gamma: ComplexArray, reference_ohm: float) -> Iterator[Resonance]:

@@ -62,33 +62,35 @@ def chosen_rows(result: FeedpointResult, choice: RowChoice, *, thin: bool) -> Ro
     WrongUsage
         For frequencies outside the sweep, and a range without points.
     """
-    points, between = _points_and_between(result, choice)
-    thinned = thin and choice.every is None and not choice.all_rows and points.size > TELLING_ROWS + 4
+    in_range = _range(result, choice) if choice.picks_points or not choice.at_hz else np.array([], dtype=int)
+    thinned = thin and choice.every is None and not choice.all_rows and in_range.size > TELLING_ROWS + 4
     if thinned:
-        points = telling_points(result, points)
-    rows = _rows(result, points)
+        in_range = telling_points(result, in_range)
+    asked, between = _asked_for(result, choice)
+    rows = _rows(result, np.array(sorted({*in_range.tolist(), *asked.tolist()}), dtype=int))
     if between.size == 0:
         return Rows(*rows, result.frequency_hz.size, thinned)
-    return Rows(*_merged(rows, _rows(result.at(between))), result.frequency_hz.size, thinned, (_said(between),))
+    said = (_said(between, result),)
+    return Rows(*_merged(rows, _rows(result.at(between))), result.frequency_hz.size, thinned, said)
 
 
-def _said(between: RealArray) -> Finding:
+def _said(between: RealArray, result: FeedpointResult) -> Finding:
     frequencies = ", ".join(f"{frequency / 1e6:.9g}" for frequency in between)
+    where = " at the antenna terminals" if result.run.sections else ""
     message = (
-        f"{frequencies} MHz: between points of the sweep; the reflection at the antenna terminals was interpolated "
-        "(cubic, real and imaginary part)."
+        f"{frequencies} MHz: between points of the sweep; the reflection{where} was interpolated (cubic, real and "
+        "imaginary part)."
     )
     return Finding("interpolated-row", "note", message, {"rows": int(between.size)})
 
 
-def _points_and_between(result: FeedpointResult, choice: RowChoice) -> tuple[Indices, RealArray]:
-    """Indices of the sweep's points that were asked for, and frequencies [Hz] that lie between points."""
+def _asked_for(result: FeedpointResult, choice: RowChoice) -> tuple[Indices, RealArray]:
+    """Indices of the points that single frequencies name, and the frequencies [Hz] that lie between points."""
     frequency = result.frequency_hz
-    points = _range(result, choice) if choice.picks_points or not choice.at_hz else np.array([], dtype=int)
     asked = np.array(sorted(set(choice.at_hz)), dtype=float)
     nearest = np.searchsorted((frequency[1:] + frequency[:-1]) / 2.0, asked)
     on_point = np.isclose(asked, frequency[nearest], rtol=_SAME_FREQUENCY, atol=0.0)
-    return np.array(sorted({*points.tolist(), *nearest[on_point].tolist()}), dtype=int), asked[~on_point]
+    return nearest[on_point], asked[~on_point]
 
 
 def _range(result: FeedpointResult, choice: RowChoice) -> Indices:

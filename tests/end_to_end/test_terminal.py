@@ -52,7 +52,7 @@ def test_no_color_is_honoured(place):
 
 
 def test_progress_bar_of_several_sweeps_that_take_long(place):
-    long = "import feedpoint.cli.carry as carry; carry.PROGRESS_AFTER_S = {}; from feedpoint.cli.app import main; main()"
+    long = "from feedpoint.cli import carry; carry.PROGRESS_AFTER_S = {}; from feedpoint.cli.app import main; main()"
     three = ("deembed", "a.s1p", "a.s1p", "a.s1p", "--run", "run.toml")
     slow = on_a_terminal(*three, cwd=place, code=long.format(-1.0))
     assert "sweeps" in slow

@@ -60,6 +60,23 @@ def test_a_dip_between_two_points_is_found_with_its_band():
     assert frequency[2] < marks.swr2_low_hz.value < marks.minimum_swr_hz.value < marks.swr2_high_hz.value < frequency[3]
 
 
+def test_edges_on_points_of_the_sweep_are_found():
+    # Gamma = 1/3 at two points exactly, less between them: SWR 2 there, to the last digit.
+    frequency = np.array([1.0, 2.0, 3.0, 4.0, 5.0]) * 1e6
+    gamma = np.array([0.6, 1.0 / 3.0, 0.1, 1.0 / 3.0, 0.6])
+    marks = landmarks_of(frequency, gamma, 50.0, gamma, ())
+    assert marks.swr2_low_hz.value == pytest.approx(2e6, abs=1.0)
+    assert marks.swr2_high_hz.value == pytest.approx(4e6, abs=1.0)
+
+
+def test_an_infinite_reflection_hurts_nothing_else():
+    frequency = np.linspace(13e6, 15e6, 41)
+    gamma = reflection_from_impedance(series_circuit(frequency), 50.0)
+    gamma[3] = complex(np.inf, 0.0)
+    marks = landmarks_of(frequency, gamma, 50.0, gamma, ())
+    assert marks.minimum_swr.value == pytest.approx(1.25, abs=1e-3)
+
+
 def test_what_lies_outside_the_sweep_is_null():
     frequency = np.linspace(14.0e6, 14.2e6, 51)
     bands = (Band("inside", 14.05e6, 14.15e6), Band("outside", 14.1e6, 14.35e6), Band("whole", 14.0e6, 14.2e6))

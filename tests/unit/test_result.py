@@ -108,6 +108,15 @@ def test_telling_rows_hold_ends_landmarks_and_steps():
     assert 15 <= points.size <= 24
 
 
+def test_rows_that_were_asked_for_are_never_thinned_away():
+    result = deembed(dipole(), RUN)
+    on_points = tuple(float(frequency) for frequency in FREQUENCY[3:63:2])
+    assert chosen_rows(result, RowChoice(at_hz=on_points), thin=True).columns["frequency_hz"].size == 30
+    with_range = chosen_rows(result, RowChoice(at_hz=(FREQUENCY[7], 14.2213e6), from_hz=10e6), thin=True)
+    assert with_range.thinned
+    assert {FREQUENCY[7], 14.2213e6} <= set(with_range.columns["frequency_hz"])
+
+
 def test_single_point_sweep_works_and_says_where_it_cannot():
     result = deembed(Sweep(np.array([14.2e6]), np.array([0.2 + 0.1j])), RUN)
     assert result.landmarks.swr2_low_hz.value is None
