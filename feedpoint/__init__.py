@@ -27,8 +27,9 @@ if TYPE_CHECKING:
     from feedpoint.interval import Interval
     from feedpoint.line.loss_law import LossLaw
     from feedpoint.result import FeedpointResult, deembed, embed
+    from feedpoint.run.cable import CableSection
     from feedpoint.run.record import AnalyzerErrors, Band, Run
-    from feedpoint.run.sections import CableSection, LumpedSection, TransformerSection
+    from feedpoint.run.sections import LumpedSection, TransformerSection
     from feedpoint.run.sheet import parse_run_sheet, read_run_sheet
     from feedpoint.run.two_port_file import TwoPortSection
     from feedpoint.sweep.reader import read_sweep
@@ -38,7 +39,7 @@ _HOME = {
     "AnalyzerErrors": "run.record",
     "Assumed": "assumed",
     "Band": "run.record",
-    "CableSection": "run.sections",
+    "CableSection": "run.cable",
     "FeedpointError": "errors",
     "FeedpointResult": "result",
     "Finding": "finding",

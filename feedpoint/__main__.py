@@ -1,5 +1,5 @@
 """`python -m feedpoint` is the command `feedpoint`."""
 
-from feedpoint.cli.app import main
+from feedpoint.cli.entry import main
 
 main()

@@ -17,13 +17,15 @@ from feedpoint.run.record import Band
 
 # |Gamma|^2 at SWR 2.
 _SWR_2 = 1.0 / 9.0
-# Im Gamma must leave a strip of this many standard deviations of the sweep's own scatter on both sides of a resonance,
-# else noise around a resistive load would be a row of resonances. The strip's half-width is never more than 0.005: a
-# coarse sweep of a clean antenna looks like scatter too.
-_SCATTER_MULTIPLE = 3.0
+# Im Gamma must pass from one side to the other of a strip of so many standard deviations of the sweep's own scatter,
+# else noise around a resistive load would be a row of resonances: 4.5 are exceeded once in 150,000 points. The
+# half-width is at most 0.005, since of a coarse sweep even a clean antenna looks like scatter.
+_SCATTER_MULTIPLE = 4.5
 _WIDEST_STRIP = 0.005
 # Rounding of the de-embedding, in case the scatter is none.
 _NARROWEST_STRIP = 1e-12
+# Orders of differences that the scatter is estimated from, with (2 k)!/(k!)^2.
+_SPREADS = ((3, 20.0), (5, 252.0), (7, 3432.0))
 # A band edge that differs from the sweep's end by rounding lies on it.
 _SAME_FREQUENCY = 1e-9
 
@@ -202,42 +204,75 @@ def real_roots(polynomial: RealArray, low: float, high: float) -> list[float]:
 
 def _resonances(frequency_hz: RealArray, gamma: ComplexArray, reference_ohm: float) -> Iterator[Resonance]:
     """Resonances of a reflection, rising in frequency."""
-    for interval in crossings(gamma.imag, _strip(gamma)):
-        local, offset, scale = local_cubic(frequency_hz, gamma, interval)
-        left, right = gamma.imag[interval], gamma.imag[interval + 1]
-        straight = left / (left - right)
-        at = min(real_roots(local.imag, 0.0, 1.0), key=lambda t: abs(t - straight), default=straight)
-        real = np.array(complex(np.polyval(local.real, at), 0.0))
-        resistance = impedance_from_reflection(real, reference_ohm).real
+    for passage in passages(gamma.imag, _strip(gamma.imag)):
+        at_hz, real = _zero(frequency_hz, gamma, passage)
+        resistance = impedance_from_reflection(np.array(complex(real, 0.0)), reference_ohm).real
         # dX/df has the sign of d Im Gamma/df where Gamma is real: dZ/dGamma = 2 R/(1 - Gamma)^2 is positive there.
-        kind: ResonanceKind = "series" if right > left else "parallel"
-        yield Resonance(Interval(offset + scale * at), Interval(float(resistance)), kind)
+        kind: ResonanceKind = "series" if passage.rises else "parallel"
+        yield Resonance(Interval(at_hz), Interval(float(resistance)), kind)
 
 
-def _strip(gamma: ComplexArray) -> float:
-    """Half-width of the strip around 0 within which the sign of Im Gamma may be noise."""
-    if gamma.size < 5:
-        return _NARROWEST_STRIP
-    # Third differences cancel whatever is smooth; of white noise their standard deviation is sqrt(20) times its own.
-    # (Their median by sorting: np.median takes 7 ms to import, for a feature that is not needed here.)
-    differences = np.sort(np.abs(np.diff(gamma.imag, 3)))
-    scatter: float = differences[differences.size // 2] / (0.6745 * 20.0**0.5)
-    return float(min(max(_SCATTER_MULTIPLE * scatter, _NARROWEST_STRIP), _WIDEST_STRIP))
+def _zero(frequency_hz: RealArray, gamma: ComplexArray, passage: "Passage") -> tuple[float, float]:
+    """Frequency [Hz] at which Im Gamma passes through 0, and Re Gamma there."""
+    chosen = slice(passage.first, passage.last + 1)
+    signs = np.sign(gamma.imag[chosen])
+    changes = np.flatnonzero(signs[1:] != signs[:-1])
+    if passage.first == passage.last:
+        return float(frequency_hz[passage.first]), float(gamma.real[passage.first])
+    if changes.size > 1 and np.all(signs):
+        # Noise passes through 0 more than once: a straight line through all points of the passage is the better guess.
+        offset, scale = float(frequency_hz[passage.first]), float(np.ptp(frequency_hz[chosen]))
+        line = np.polyfit((frequency_hz[chosen] - offset) / scale, gamma[chosen], 1)
+        at = float(np.clip(-line[1].imag / line[0].imag, 0.0, 1.0))
+        return offset + scale * at, float(np.polyval(line, at).real)
+    interval = passage.first + int(changes[0])
+    local, offset, scale = local_cubic(frequency_hz, gamma, interval)
+    left, right = gamma.imag[interval], gamma.imag[interval + 1]
+    straight = left / (left - right)
+    at = min(real_roots(local.imag, 0.0, 1.0), key=lambda t: abs(t - straight), default=straight)
+    return offset + scale * at, float(np.polyval(local, at).real)
 
 
-def crossings(values: RealArray, strip: float) -> list[int]:
+def _strip(values: RealArray) -> float:
+    """Half-width of the strip around 0 within which the sign of `values` (F,) may be noise."""
+    # Of white noise the k-th differences have sqrt((2 k)!/(k!)^2) times its standard deviation; what is smooth they
+    # cancel the better the higher k is, as long as it turns by less than a radian from point to point.
+    usable = ((order, spread) for order, spread in _SPREADS if order < values.size)
+    scatters = [_median(np.abs(np.diff(values, order))) / (0.6745 * spread**0.5) for order, spread in usable]
+    return min(max(_SCATTER_MULTIPLE * min(scatters, default=0.0), _NARROWEST_STRIP), _WIDEST_STRIP)
+
+
+def _median(values: RealArray) -> float:
+    # np.median takes 7 ms to import, for features that are not needed here.
+    return float(np.sort(values)[values.size // 2])
+
+
+class Passage(NamedTuple):
+    """Points `first` to `last` (indices) over which values pass through 0, and whether they rise."""
+
+    first: int
+    last: int
+    rises: bool
+
+
+def passages(values: RealArray, strip: float) -> list[Passage]:
     """
-    Intervals (index of their lower point) in which `values` (F,) pass through 0 from one side of a strip to the other.
+    Where `values` (F,) pass through 0, from one side of a strip around it to the other.
 
-    Of several sign changes on one way through the strip the middle one is given.
+    Values that begin or end at 0 pass through it too: rounding is no doubt about a sign.
     """
     sides = np.where(np.abs(values) > strip, np.sign(values), 0.0)
     decided = np.flatnonzero(sides)
+    if decided.size == 0:
+        return []
     turns = np.flatnonzero(sides[decided[1:]] != sides[decided[:-1]])
-    found = []
-    for start, stop in zip(decided[turns], decided[turns + 1], strict=True):
-        signs = np.sign(values[start : stop + 1])
-        signs[signs == 0.0] = sides[stop]
-        changes = np.flatnonzero(signs[1:] != signs[:-1])
-        found.append(int(start + changes[changes.size // 2]))
+    found = [
+        Passage(int(first), int(last), bool(sides[last] > 0))
+        for first, last in zip(decided[turns], decided[turns + 1], strict=True)
+    ]
+    begins, ends = np.abs(values[[0, -1]]) <= _NARROWEST_STRIP
+    if begins:
+        found.insert(0, Passage(0, 0, bool(sides[decided[0]] > 0)))
+    if ends:
+        found.append(Passage(values.size - 1, values.size - 1, bool(sides[decided[-1]] < 0)))
     return found

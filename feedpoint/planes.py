@@ -18,7 +18,7 @@ from typing import TypeAlias
 import numpy as np
 
 from feedpoint.errors import RunRefused
-from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line import ComplexArray, RealArray, read_only
 from feedpoint.line.chain import Chain
 from feedpoint.line.reflection import ratio
 from feedpoint.run.record import Run
@@ -57,12 +57,12 @@ class Planes:
     @cached_property
     def gamma(self) -> ComplexArray:
         """Reflection at every plane (S + 1, ..., F) against the sweep's reference."""
-        return self.gamma_against(self.reference_ohm)
+        return read_only(self.gamma_against(self.reference_ohm))
 
     @cached_property
     def impedance_ohm(self) -> ComplexArray:
         """Impedance seen towards the antenna at every plane (S + 1, ..., F) [ohm]; infinite at an open circuit."""
-        return ratio(self.voltage, self.current)
+        return read_only(ratio(self.voltage, self.current))
 
     @cached_property
     def total_loss_db(self) -> RealArray:
@@ -75,7 +75,7 @@ class Planes:
         both = (entering > 0.0) & (delivered > 0.0)
         quotient = np.divide(entering, delivered, out=np.full(entering.shape, np.nan), where=both)
         loss_db: RealArray = 10.0 * np.log10(quotient)
-        return loss_db
+        return read_only(loss_db)
 
 
 def deembedded(gamma: ComplexArray, frequency_hz: RealArray, run: Run, reference_ohm: float) -> Planes:
@@ -120,12 +120,10 @@ def _planes(
 ) -> Planes:
     nothing = np.zeros((0, frequency_hz.size))
     voltage, current = (np.stack(np.broadcast_arrays(*parts)) for parts in zip(*states, strict=True))
+    matched_loss_db = np.stack([two_port.matched_loss_db for two_port in two_ports]) if two_ports else nothing
+    electrical_length = np.stack([two_port.electrical_length for two_port in two_ports]) if two_ports else nothing
     return Planes(
-        voltage,
-        current,
-        reference_ohm,
-        np.stack([two_port.matched_loss_db for two_port in two_ports]) if two_ports else nothing,
-        np.stack([two_port.electrical_length for two_port in two_ports]) if two_ports else nothing,
+        read_only(voltage), read_only(current), reference_ohm, read_only(matched_loss_db), read_only(electrical_length)
     )
 
 
@@ -134,8 +132,8 @@ def _two_ports(run: Run, frequency_hz: RealArray, reference_ohm: float) -> tuple
     with np.errstate(over="ignore", invalid="ignore"):
         two_ports = run.two_ports(frequency_hz, reference_ohm)
     for number, (section, two_port) in enumerate(zip(run.sections, two_ports, strict=True), start=1):
-        if np.max(two_port.matched_loss_db) > _MOST_LOSS_DB:
-            at = int(np.argmax(two_port.matched_loss_db))
+        if np.any(two_port.matched_loss_db > _MOST_LOSS_DB):
+            at = int(np.nanargmax(two_port.matched_loss_db))
             raise RunRefused(
                 f"a matched loss of {two_port.matched_loss_db[at]:.4g} dB at {frequency_hz[at] / 1e6:g} MHz; expected "
                 f"at most {_MOST_LOSS_DB:g} dB, beyond which no reflection comes back. Check its length and loss.",

@@ -18,7 +18,7 @@ from feedpoint.audit.passivity import loss_above_ceiling, reflection_above_unity
 from feedpoint.errors import WrongUsage
 from feedpoint.finding import Finding
 from feedpoint.landmarks import Landmarks, landmarks_of
-from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line import ComplexArray, RealArray, read_only
 from feedpoint.line.reflection import return_loss_db, swr_from_reflection
 from feedpoint.planes import Planes, deembedded, embedded, without_extension
 from feedpoint.run.record import Run
@@ -145,7 +145,8 @@ class FeedpointResult:
         )
         unknown = np.full(self.frequency_hz.size, np.nan)
         columns = dict(zip(COLUMNS, (*values, *(unknown for _ in INTERVAL_COLUMNS)), strict=True))
-        return columns | dict(zip(INSPECT_COLUMNS[5:], _of_reflection(planes.gamma[0], values[3]), strict=True))
+        columns |= dict(zip(INSPECT_COLUMNS[5:], _of_reflection(planes.gamma[0], values[3]), strict=True))
+        return {name: read_only(column) for name, column in columns.items()}
 
     def table(self) -> pd.DataFrame:
         """Return the columns as a table; NaN where a value is not known."""
@@ -195,7 +196,14 @@ class FeedpointResult:
         return replace(self, sweep=sweep, planes=planes)
 
 
-def deembed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -> FeedpointResult:
+def deembed(
+    sweep: Sweep,
+    run: Run,
+    trials: int | None = None,
+    seed: int = 0,  # noqa: ARG001
+    *,
+    swr_reference_ohm: float | None = None,
+) -> FeedpointResult:
     """
     Impedance at the antenna terminals, from a sweep at the shack end of a run.
 
@@ -203,6 +211,8 @@ def deembed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -
     ----------
     sweep : Sweep
     run : Run
+    trials, seed : int
+        Reserved for Monte Carlo intervals, which this version does not have: any number of trials is refused.
     swr_reference_ohm : float, optional [ohm]
         What SWR and return loss refer to; the sweep's reference without it.
 
@@ -210,7 +220,11 @@ def deembed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -
     ------
     RunRefused
         If a section cannot be evaluated at the sweep's frequencies, or the run lets nothing back.
+    WrongUsage
+        For trials, and for a reference that is not positive.
     """
+    if trials is not None:
+        raise WrongUsage("trials: this version has no Monte Carlo intervals; leave it out.")
     frequency_hz, reference_ohm = sweep.frequency_hz, sweep.reference_ohm
     gamma = without_extension(sweep.gamma, frequency_hz, run.analyzer.extension_s)
     planes = deembedded(gamma, frequency_hz, run, reference_ohm)
@@ -220,7 +234,7 @@ def deembed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -
         *loss_above_ceiling(frequency_hz, gamma, planes.gamma[-1]),
         *_findings_about_run(sweep, run, planes),
     )
-    return FeedpointResult(sweep, run, planes, "deembed", swr_reference_ohm or reference_ohm, findings)
+    return FeedpointResult(sweep, run, planes, "deembed", _swr_reference(swr_reference_ohm, sweep), findings)
 
 
 def embed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -> FeedpointResult:
@@ -235,7 +249,7 @@ def embed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -> 
         *reflection_above_unity(sweep.frequency_hz, sweep.gamma, "the antenna terminals"),
         *_findings_about_run(sweep, run, planes),
     )
-    return FeedpointResult(sweep, run, planes, "embed", swr_reference_ohm or sweep.reference_ohm, findings)
+    return FeedpointResult(sweep, run, planes, "embed", _swr_reference(swr_reference_ohm, sweep), findings)
 
 
 def _of_reflection(gamma: ComplexArray, swr: RealArray) -> tuple[RealArray, ...]:
@@ -244,8 +258,17 @@ def _of_reflection(gamma: ComplexArray, swr: RealArray) -> tuple[RealArray, ...]
     return magnitude, np.rad2deg(np.angle(gamma)), 100.0 * magnitude**2, 20.0 * np.log10(swr)
 
 
+def _swr_reference(stated_ohm: float | None, sweep: Sweep) -> float:
+    if stated_ohm is None:
+        return sweep.reference_ohm
+    if not 0.0 < stated_ohm < np.inf:
+        raise WrongUsage(f"SWR cannot refer to {stated_ohm} ohm; expected a positive resistance.")
+    return stated_ohm
+
+
 def _findings_about_run(sweep: Sweep, run: Run, planes: Planes) -> list[Finding]:
     return [
+        *(finding for section in run.sections for finding in section.findings),
         *coarse_step(sweep.frequency_hz, planes.electrical_length),
         *reference_mismatch(run, sweep.reference_ohm),
         *loss_data(run, sweep.frequency_hz),

@@ -16,7 +16,6 @@ DECIBELS_PER_NEPER = 20.0 / log(10.0)           # dB per Np, from the definition
 HZ_PER_MHZ = 1e6
 SECONDS_PER_NANOSECOND = 1e-9
 METRES_PER_100M = 100.0
-SQUARE_ROOT_HZ_PER_SQUARE_ROOT_MHZ = 1e3        # sqrt(1e6)
 
 NUMBER = r"[+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]+)?"
 _QUANTITY = re.compile(rf"\s*({NUMBER})\s*([^\s\d.+-].*?)?\s*", re.ASCII | re.DOTALL)

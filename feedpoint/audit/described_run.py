@@ -4,8 +4,8 @@ import numpy as np
 
 from feedpoint.finding import Figure, Finding
 from feedpoint.line import RealArray
+from feedpoint.run.cable import CableSection
 from feedpoint.run.record import Run
-from feedpoint.run.sections import CableSection
 
 # The reflection turns by twice the electrical length: by a quarter turn in an eighth of a wavelength.
 _QUARTER_TURN = 0.125

@@ -1,17 +1,11 @@
-"""The command `feedpoint`: its subcommands, and the one place that turns a refusal into a line and an exit code."""
+"""The command `feedpoint` and its subcommands."""
 
-import os
-import sys
-from io import TextIOWrapper
 from typing import Annotated
 
 import typer
 
 from feedpoint.cli.carry import deembed, embed
 from feedpoint.cli.inspect import inspect
-from feedpoint.errors import FeedpointError, WrongUsage
-
-WRONG_USAGE, REFUSED, INTERRUPTED = 2, 3, 130
 
 app = typer.Typer(
     name="feedpoint",
@@ -43,24 +37,3 @@ def _common(
     ] = False,
 ) -> None:
     pass
-
-
-def main() -> None:
-    """Run the command; a refusal is one line on stderr, never a traceback."""
-    # Nobody else's package has a say in how a run sheet is read; looking for such plugins takes 15 ms besides.
-    os.environ["PYDANTIC_DISABLE_PLUGINS"] = "__all__"
-    for stream in (sys.stdout, sys.stderr):
-        # A file name or comment may hold what the terminal's encoding does not.
-        if isinstance(stream, TextIOWrapper):
-            stream.reconfigure(errors="backslashreplace")
-    try:
-        app()
-    except FeedpointError as refusal:
-        print(f"feedpoint: {refusal}", file=sys.stderr)
-        sys.exit(WRONG_USAGE if isinstance(refusal, WrongUsage) else REFUSED)
-    except KeyboardInterrupt:
-        sys.exit(INTERRUPTED)
-    except BrokenPipeError:
-        # Whoever read our output (head, a pager) has enough. Python would complain once more when it flushes at exit.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-        sys.exit(1)

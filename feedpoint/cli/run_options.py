@@ -84,7 +84,7 @@ class RunOptions(NamedTuple):
                 "--velocity-factor, --loss-at and --length."
             )
         if self.temperature_c is not None:
-            run = run.at_temperature(self.temperature_c, origin=Assumed("", "option", "--temperature"))
+            run = run.at_temperature(Assumed(self.temperature_c, "option", "--temperature"))
         return run.with_bands(bands_of_options(self.bands))
 
 

@@ -48,11 +48,13 @@ class Chain(NamedTuple):
         Loss between ends matched to `reference_ohm` [dB], 10 log10((1 - |S11|^2)/|S21|^2).
 
         With x = a + b/R and y = c R + d: S11 = (x - y)/(x + y) and S21 = 2/(x + y), so the quotient is
-        (|x + y|^2 - |x - y|^2)/4 = Re(x conj(y)), which does not cancel for small losses.
+        (|x + y|^2 - |x - y|^2)/4 = Re(x conj(y)), which does not cancel for small losses. NaN where that is not
+        positive: measured two-ports may reflect more than all by a rest of their calibration.
         """
         x = self.a + self.b / reference_ohm
         y = self.c * reference_ohm + self.d
-        return 10.0 * np.log10((x * np.conj(y)).real)
+        quotient = np.asarray((x * np.conj(y)).real)
+        return 10.0 * np.log10(quotient, out=np.full(quotient.shape, np.nan), where=quotient > 0.0)
 
 
 def line_chain(propagation: ComplexArray, characteristic_impedance_ohm: ComplexArray) -> Chain:

@@ -73,7 +73,7 @@ def _sections(run: Run) -> Iterator[str]:
         figures = section.figures()
         parts = [name + _figure(figures[key].value, unit) for key, name, unit in _SHOWN if key in figures]
         origins = dict.fromkeys(_ORIGINS[figure.origin] for figure in figures.values())
-        cable = f" ({section.cable})" if section.cable not in ("", section.name) else ""
+        cable = f" ({figures['cable'].value})" if "cable" in figures and figures["cable"].value != section.name else ""
         yield one_line(f"{section.name}{cable}: {', '.join(parts)} [{', '.join(origins)}]")
     temperature = run.temperature_c
     yield f"cable temperature {temperature.value:g} C [{_ORIGINS[temperature.origin]}]"

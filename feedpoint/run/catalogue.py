@@ -10,8 +10,8 @@ from typing import NamedTuple
 from feedpoint.errors import RunRefused, quoted
 from feedpoint.line.loss_fit import fit_loss_law
 from feedpoint.line.loss_law import LossLaw
+from feedpoint.run.cable import Ratings
 from feedpoint.run.forms import CatalogueEntryForm, LossKeys
-from feedpoint.run.sections import Ratings
 from feedpoint.run.toml_tables import checked, parse_toml, refuse_unknown_keys
 from feedpoint.sweep.text import decoded, read_bytes
 from feedpoint.units import HZ_PER_MHZ, METRES_PER_FOOT
@@ -35,9 +35,10 @@ class CatalogueEntry(NamedTuple):
     catalogue: str = BUILT_IN
     place: str = ""
 
-    def loss_law(self, velocity_factor: float) -> LossLaw:
-        """Return the law at the velocity factor that is in force (the entry's, or the sheet's instead of it)."""
-        law = resolved_loss(self.loss_keys, velocity_factor, self.catalogue, self.place)
+    def loss_law(self, velocity_factor: float, steel_core: bool | None = None) -> LossLaw:
+        """Return the law at the velocity factor that is in force; with `steel_core` where a sheet says so."""
+        keys = self.loss_keys if steel_core is None else self.loss_keys.model_copy(update={"steel_core": steel_core})
+        law = resolved_loss(keys, velocity_factor, self.catalogue, self.place)
         assert law is not None
         return law
 

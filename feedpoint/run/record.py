@@ -6,7 +6,9 @@ from typing import NamedTuple
 from feedpoint.assumed import Assumed
 from feedpoint.errors import RunRefused
 from feedpoint.line import RealArray
-from feedpoint.run.sections import CableSection, Section, SectionTwoPort, Surroundings
+from feedpoint.line.loss_law import LAW_TEMPERATURE_C
+from feedpoint.run.cable import CableSection
+from feedpoint.run.sections import Section, SectionTwoPort, Surroundings
 
 # Physical sense, not a limit of the formulas: no cable is swept outside.
 COLDEST_C, HOTTEST_C = -100.0, 250.0
@@ -44,8 +46,8 @@ class AnalyzerErrors(NamedTuple):
         return any(figure is not None for figure in figures)
 
 
-def _room_temperature() -> Assumed[float]:
-    return Assumed(20.0, "default")
+def _default_temperature() -> Assumed[float]:
+    return Assumed(LAW_TEMPERATURE_C, "default")
 
 
 @dataclass(frozen=True, eq=False)
@@ -63,7 +65,7 @@ class Run:
 
     sections: tuple[Section, ...]
     name: str = "run"
-    temperature_c: Assumed[float] = field(default_factory=_room_temperature)
+    temperature_c: Assumed[float] = field(default_factory=_default_temperature)
     temperature_tolerance_c: float | None = None
     analyzer: AnalyzerErrors = field(default_factory=AnalyzerErrors)
     bands: tuple[Band, ...] = ()
@@ -78,10 +80,10 @@ class Run:
                 key=self.temperature_c.where or "temperature_c",
             )
 
-    def at_temperature(self, temperature_c: float, *, origin: Assumed[str] | None = None) -> "Run":
-        """Return the run at another cable temperature [degrees C]; `origin` says whose word that is."""
-        said = origin or Assumed("", "call")
-        return replace(self, temperature_c=Assumed(temperature_c, said.origin, said.where))
+    def at_temperature(self, temperature_c: float | Assumed[float]) -> "Run":
+        """Return the run at another cable temperature [degrees C], which may say whose word it is."""
+        stated = temperature_c if isinstance(temperature_c, Assumed) else Assumed(temperature_c)
+        return replace(self, temperature_c=stated)
 
     def with_bands(self, bands: tuple[Band, ...]) -> "Run":
         """Return the run with more bands."""

@@ -6,7 +6,7 @@ from typing import Any
 
 from feedpoint.assumed import Assumed
 from feedpoint.errors import RunRefused
-from feedpoint.run.build import Workshop, section_of_table
+from feedpoint.run.build import BuildContext, section_of_table
 from feedpoint.run.catalogue import Catalogue, built_in_catalogue, read_catalogue
 from feedpoint.run.forms import AnalyzerForm, BandForm, RunForm
 from feedpoint.run.record import AnalyzerErrors, Band, Run
@@ -45,25 +45,24 @@ def parse_run_sheet(
     folder = folder or Path()
     head = checked(RunForm, tables["run"], source, "[run]") if "run" in tables else RunForm()
     named = Path(cables_file) if cables_file is not None else (folder / head.cables_file if head.cables_file else None)
-    workshop = Workshop(source, folder, _catalogue_when_needed(named))
+    context = BuildContext(source, folder, _catalogue_when_needed(named))
     sections = tuple(
-        section_of_table(table, f"section {number}", workshop)
+        section_of_table(table, f"section {number}", context)
         for number, table in enumerate(_list_of_tables(tables, "section", source), start=1)
     )
     if not sections:
         raise RunRefused("no [[section]]; expected at least one, the first at the shack end.", source=source)
-    temperature = Assumed(20.0, "default")
-    if head.temperature_c is not None:
-        temperature = Assumed(head.temperature_c, "sheet", "[run], temperature_c")
-    return Run(
+    run = Run(
         sections,
         head.name or Path(source).stem,
-        temperature,
-        head.temperature_tolerance_c,
-        analyzer_errors(tables["analyzer"], source) if "analyzer" in tables else AnalyzerErrors(),
-        _bands(tables, source),
-        source,
+        temperature_tolerance_c=head.temperature_tolerance_c,
+        analyzer=analyzer_errors(tables["analyzer"], source) if "analyzer" in tables else AnalyzerErrors(),
+        bands=_bands(tables, source),
+        source=source,
     )
+    if head.temperature_c is None:
+        return run
+    return run.at_temperature(Assumed(head.temperature_c, "sheet", "[run], temperature_c"))
 
 
 def run_of_section(table: dict[str, Any], *, cables_file: str | Path | None = None) -> Run:
@@ -76,8 +75,8 @@ def run_of_section(table: dict[str, Any], *, cables_file: str | Path | None = No
         Names the key.
     """
     named = Path(cables_file) if cables_file is not None else None
-    workshop = Workshop("", Path(), _catalogue_when_needed(named), "option")
-    section = section_of_table({"name": table.get("cable", "cable"), **table}, "options", workshop)
+    context = BuildContext("", Path(), _catalogue_when_needed(named), "option")
+    section = section_of_table({"name": table.get("cable", "cable"), **table}, "options", context)
     return Run((section,), "the run given by options", source="options")
 
 

@@ -1,24 +1,29 @@
 """A section that is known by its two-port file: an arrestor, a filter, a switch, a measured adapter."""
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
+from typing import ClassVar
 
 import numpy as np
 
 from feedpoint.assumed import Assumed
 from feedpoint.errors import RunRefused
+from feedpoint.finding import Finding
 from feedpoint.line import ComplexArray, RealArray
 from feedpoint.line.chain import scattering_chain
-from feedpoint.run.sections import Figures, SectionTwoPort, Surroundings, lengthless
+from feedpoint.run.sections import Figures, Section, SectionTwoPort, Surroundings, lengthless
 
 # Two frequencies are the same when they differ by less than any instrument resolves.
 _SAME_FREQUENCY = 1e-9
 # Below this, less than a hundredth of the wave comes back through the two-port: what is behind it is hidden.
 _LEAST_THROUGH = 0.01
 _MOST_ONE_WAY = 0.1
+# Largest singular value of the S matrix: how much more amplitude comes out than goes in, at worst. Calibrated two-ports
+# measure up to about 1.01; 1.05 is 0.4 dB of gain, which nothing passive has.
+_MOST_GAIN = 1.05
 
 
 @dataclass(frozen=True, eq=False)
-class TwoPortSection:
+class TwoPortSection(Section):
     """
     A section given by scattering parameters; port 1 is at the shack end.
 
@@ -26,13 +31,13 @@ class TwoPortSection:
     sweep's.
     """
 
+    kind: ClassVar[str] = "two-port"
     name: str
     file: Assumed[str]
     frequency_hz: RealArray
     scattering: ComplexArray
     reference_ohm: RealArray
-    kind: str = field(default="two-port", init=False)
-    cable: str = field(default="", init=False)
+    findings: tuple[Finding, ...] = ()
 
     def figures(self) -> Figures:
         return {"two_port": self.file}
@@ -94,9 +99,21 @@ class TwoPortSection:
             where = f"at {frequency_hz[one_way.argmax()] / 1e6:g} MHz"
             what = f"S21 and S12 differ by {100 * one_way.max():.3g} % {where}"
         else:
+            self._check_gain(frequency_hz, scattering)
             return
         raise RunRefused(
             f"{what}: an isolator, amplifier or stop band hides the antenna. Sweep from its antenna side.",
             source=self.file.value,
             key=self.name,
         )
+
+    def _check_gain(self, frequency_hz: RealArray, scattering: ComplexArray) -> None:
+        gain = np.linalg.norm(scattering, ord=2, axis=(1, 2))
+        if gain.max() > _MOST_GAIN:
+            raise RunRefused(
+                f"the two-port gives {gain.max():.3g} times what it receives at "
+                f"{frequency_hz[gain.argmax()] / 1e6:g} MHz; expected a passive one (at most {_MOST_GAIN}). Sweep from "
+                "the antenna side of an amplifier.",
+                source=self.file.value,
+                key=self.name,
+            )

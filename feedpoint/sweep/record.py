@@ -1,7 +1,7 @@
 """A sweep: one-port complex reflection against frequency."""
 
 from collections.abc import Mapping
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from types import MappingProxyType
 
 import numpy as np
@@ -9,8 +9,11 @@ from numpy.typing import ArrayLike
 
 from feedpoint.errors import SweepRefused
 from feedpoint.finding import Finding
-from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line import ComplexArray, RealArray, read_only
 from feedpoint.line.reflection import reflection_from_impedance
+
+# Far beyond what any fault of an analyzer shows; squares of larger numbers overflow sooner or later.
+MOST_MAGNITUDE = 1e6
 
 
 @dataclass(frozen=True, eq=False)
@@ -51,16 +54,19 @@ class Sweep:
     findings: tuple[Finding, ...] = ()
 
     def __post_init__(self) -> None:
-        frequency = np.array(self.frequency_hz, dtype=float, ndmin=1)
-        gamma = np.array(self.gamma, dtype=complex, ndmin=1)
-        problem = _problem(frequency, gamma, self.reference_ohm)
+        try:
+            frequency = np.array(self.frequency_hz, dtype=float, ndmin=1)
+            gamma = np.array(self.gamma, dtype=complex, ndmin=1)
+            reference_ohm = float(self.reference_ohm)
+        except (TypeError, ValueError):
+            message = "frequencies, reflections or reference are no numbers."
+            raise SweepRefused(message, source=self.source) from None
+        problem = _problem(frequency, gamma, reference_ohm)
         if problem:
             raise SweepRefused(problem, source=self.source)
-        frequency.setflags(write=False)
-        gamma.setflags(write=False)
-        object.__setattr__(self, "frequency_hz", frequency)
-        object.__setattr__(self, "gamma", gamma)
-        object.__setattr__(self, "reference_ohm", float(self.reference_ohm))
+        object.__setattr__(self, "frequency_hz", read_only(frequency))
+        object.__setattr__(self, "gamma", read_only(gamma))
+        object.__setattr__(self, "reference_ohm", reference_ohm)
         object.__setattr__(self, "understood_as", MappingProxyType(dict(self.understood_as)))
 
     @classmethod
@@ -71,10 +77,6 @@ class Sweep:
         impedance = np.asarray(impedance_ohm, dtype=complex)
         gamma = reflection_from_impedance(impedance, reference_ohm)
         return cls(np.asarray(frequency_hz, dtype=float), gamma, reference_ohm, source)
-
-    def with_gamma(self, gamma: ComplexArray) -> "Sweep":
-        """Return the sweep with another reflection (F,) at the same frequencies."""
-        return replace(self, gamma=gamma)
 
 
 def _problem(frequency: RealArray, gamma: ComplexArray, reference_ohm: float) -> str:
@@ -87,6 +89,8 @@ def _problem(frequency: RealArray, gamma: ComplexArray, reference_ohm: float) ->
         return f"the reference resistance is {reference_ohm} ohm; expected a positive number."
     if not (np.all(np.isfinite(frequency)) and np.all(np.isfinite(gamma))):
         return "a value is not finite; every frequency and reflection must be a number."
+    if np.abs(gamma).max() > MOST_MAGNITUDE:
+        return f"a reflection of {np.abs(gamma).max():.3g} is none; expected about 1 at most."
     if frequency[0] <= 0:
         return f"the frequency {frequency[0]:g} Hz is not positive."
     if np.any(np.diff(frequency) <= 0):

@@ -13,6 +13,7 @@ from tempfile import TemporaryFile
 from typing import IO
 
 # Imported here, before anything is forked, so that no forked command has to.
+import feedpoint.cli.app
 import feedpoint.report.envelope
 import feedpoint.report.files
 import feedpoint.report.lines
@@ -21,7 +22,7 @@ import feedpoint.report.tables
 import feedpoint.run.sheet
 import feedpoint.sweep.reader
 import feedpoint.sweep.reading  # noqa: F401
-from feedpoint.cli.app import main
+from feedpoint.cli.entry import main
 
 REPOSITORY = Path(__file__).resolve().parents[2]
 

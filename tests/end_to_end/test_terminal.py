@@ -10,7 +10,7 @@ from tests.end_to_end.command import REPOSITORY
 pty = pytest.importorskip("pty", reason="needs a system with pseudo-terminals")
 
 
-def on_a_terminal(*args, cwd, code="from feedpoint.cli.app import main; main()", **environment):
+def on_a_terminal(*args, cwd, code="from feedpoint.cli.entry import main; main()", **environment):
     """What the command writes to a terminal of 80 columns; `code` starts it."""
     pid, terminal = pty.fork()
     if pid == 0:
@@ -52,7 +52,7 @@ def test_no_color_is_honoured(place):
 
 
 def test_progress_bar_of_several_sweeps_that_take_long(place):
-    long = "from feedpoint.cli import carry; carry.PROGRESS_AFTER_S = {}; from feedpoint.cli.app import main; main()"
+    long = "from feedpoint.cli import carry; carry.PROGRESS_AFTER_S = {}; from feedpoint.cli.entry import main; main()"
     three = ("deembed", "a.s1p", "a.s1p", "a.s1p", "--run", "run.toml")
     slow = on_a_terminal(*three, cwd=place, code=long.format(-1.0))
     assert "sweeps" in slow

@@ -42,9 +42,9 @@ def lumped(draw):
     return LumpedSection(
         "element",
         draw(st.sampled_from(["series", "shunt"])),
-        resistance_ohm=draw(st.none() | st.just(value)),
-        inductance_h=draw(st.just(value * 1e-9)),
-        capacitance_f=draw(st.none() | st.just(value * 1e-12)),
+        resistance_ohm=draw(st.none() | st.just(Assumed(value))),
+        inductance_h=Assumed(value * 1e-9),
+        capacitance_f=draw(st.none() | st.just(Assumed(value * 1e-12))),
     )
 
 
@@ -166,8 +166,6 @@ def test_no_power_reaches_an_open_or_a_short(run, gamma):
 
 
 def test_drawn_parameters_give_each_trial_its_own_row():
-    from dataclasses import replace
-
     rng = np.random.default_rng(7)
     nominal = CableSection("c", Assumed(50.0), Assumed(0.66), Assumed(30.0), Assumed(LossLaw(1.4, 0.02)))
     drawn = {
@@ -179,7 +177,7 @@ def test_drawn_parameters_give_each_trial_its_own_row():
     factor = rng.uniform(0.9, 1.1, (5, 1))
     surroundings = Surroundings(rng.uniform(-10, 35, (5, 1)), 50.0)
     together = nominal.two_port(
-        FREQUENCY_HZ, surroundings, replace(nominal.nominal(), loss=nominal.loss.value.scaled(factor), **drawn)
+        FREQUENCY_HZ, surroundings, nominal.nominal()._replace(loss=nominal.loss.value.scaled(factor), **drawn)
     )
     assert together.chain.a.shape == (5, FREQUENCY_HZ.size)
     for trial in range(5):
@@ -188,7 +186,7 @@ def test_drawn_parameters_give_each_trial_its_own_row():
         alone = nominal.two_port(
             FREQUENCY_HZ,
             Surroundings(float(surroundings.temperature_c[trial, 0]), 50.0),
-            replace(nominal.nominal(), loss=law, **one),
+            nominal.nominal()._replace(loss=law, **one),
         )
         for element in ("a", "b", "c", "d"):
             assert getattr(together.chain, element)[trial] == pytest.approx(getattr(alone.chain, element), rel=1e-13)

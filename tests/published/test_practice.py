@@ -17,7 +17,9 @@ from tests.published.lines import carried_to_shack, degrees, input_ohm, load_ohm
 from tests.published.printed import printed
 
 FREQUENCY_HZ = 14.2e6
-ANTENNA = feedpoint.LumpedSection("33 ohm and 220 pF", "series", resistance_ohm=33.0, capacitance_f=220e-12)
+ANTENNA = feedpoint.LumpedSection(
+    "33 ohm and 220 pF", "series", resistance_ohm=Assumed(33.0), capacitance_f=Assumed(220e-12)
+)
 LEAD = feedpoint.CableSection(
     "1 m", Assumed(50.0), Assumed(0.66), Assumed(1.0), Assumed(feedpoint.LossLaw(0.0))
 )

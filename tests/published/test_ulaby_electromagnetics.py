@@ -12,6 +12,7 @@ import numpy as np
 import pytest
 
 import feedpoint
+from feedpoint import Assumed
 from feedpoint.line.reflection import reflection_from_impedance, swr_from_reflection
 from tests.published.lines import (
     carried_to_antenna,
@@ -36,7 +37,7 @@ def test_example_2_1_constants_of_a_lossless_line():
 
 
 def test_example_2_3_series_resistor_and_capacitor_on_100_ohm():
-    load = feedpoint.LumpedSection("load", "series", resistance_ohm=50.0, capacitance_f=10e-12)
+    load = feedpoint.LumpedSection("load", "series", resistance_ohm=Assumed(50.0), capacitance_f=Assumed(10e-12))
     result = carried_to_shack(0.0, load, frequency_hz=100e6, reference_ohm=100.0)
     assert abs(result.planes.gamma[0, 0]) == printed("0.76")
     assert degrees(result.planes.gamma[0, 0]) == printed("-60.7")

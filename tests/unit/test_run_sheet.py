@@ -26,7 +26,7 @@ def test_figures_of_a_catalogue_cable_say_so():
     assert origins["conductor_loss"] == "catalogue"
     assert cable.length_m.value == pytest.approx(30.48)
     assert cable.name == "rg 213 u"
-    assert cable.cable == "RG-213/U"
+    assert cable.figures()["cable"].value == "RG-213/U"
 
 
 def test_delay_fixes_the_phase_and_length_the_loss():
