@@ -64,6 +64,12 @@ INSPECT_COLUMNS = (
 )
 
 
+_CALIBRATE = (
+    "Repeat the calibration at the plane where the run begins; look for another transmitter on the air."
+)
+_CHECK_MODEL = "Check the file: its format, its reference, and whether it is the impedance of an antenna."
+
+
 @dataclass(frozen=True, eq=False)
 class FeedpointResult:
     """
@@ -230,7 +236,7 @@ def deembed(
     planes = deembedded(gamma, frequency_hz, run, reference_ohm)
     findings = (
         *sweep.findings,
-        *reflection_above_unity(frequency_hz, gamma, "the shack end"),
+        *reflection_above_unity(frequency_hz, gamma, "the shack end", _CALIBRATE),
         *loss_above_ceiling(frequency_hz, gamma, planes.gamma[-1]),
         *_findings_about_run(sweep, run, planes),
     )
@@ -246,7 +252,7 @@ def embed(sweep: Sweep, run: Run, *, swr_reference_ohm: float | None = None) -> 
     planes = embedded(sweep.gamma, sweep.frequency_hz, run, sweep.reference_ohm)
     findings = (
         *sweep.findings,
-        *reflection_above_unity(sweep.frequency_hz, sweep.gamma, "the antenna terminals"),
+        *reflection_above_unity(sweep.frequency_hz, sweep.gamma, "the antenna terminals", _CHECK_MODEL),
         *_findings_about_run(sweep, run, planes),
     )
     return FeedpointResult(sweep, run, planes, "embed", _swr_reference(swr_reference_ohm, sweep), findings)

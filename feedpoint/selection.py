@@ -99,9 +99,11 @@ def _range(result: FeedpointResult, choice: RowChoice) -> Indices:
     high = frequency[-1] if choice.to_hz is None else choice.to_hz * (1 + _SAME_FREQUENCY)
     points = np.flatnonzero((frequency >= low) & (frequency <= high))[:: choice.every or 1]
     if points.size == 0:
+        ends = ((" from", choice.from_hz), (" up to", choice.to_hz))
+        asked = "".join(f"{word} {end / 1e6:.9g}" for word, end in ends if end is not None)
         raise WrongUsage(
-            f"no point of the sweep lies from {low / 1e6:.9g} to {high / 1e6:.9g} MHz; it reaches from "
-            f"{frequency[0] / 1e6:.9g} to {frequency[-1] / 1e6:.9g} MHz.",
+            f"no point of the sweep lies{asked} MHz; it reaches from {frequency[0] / 1e6:.9g} to "
+            f"{frequency[-1] / 1e6:.9g} MHz.",
             source=result.sweep.source,
         )
     return points

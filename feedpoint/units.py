@@ -15,6 +15,8 @@ METRES_PER_FOOT = 0.3048                        # exact (international foot, 195
 DECIBELS_PER_NEPER = 20.0 / log(10.0)           # dB per Np, from the definitions of both
 HZ_PER_MHZ = 1e6
 SECONDS_PER_NANOSECOND = 1e-9
+# Temperatures of a cable, degrees Celsius: physical sense, not a limit of the formulas.
+COLDEST_C, HOTTEST_C = -100.0, 250.0
 METRES_PER_100M = 100.0
 
 NUMBER = r"[+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]+)?"
@@ -112,10 +114,14 @@ def parse_temperature_c(text: str) -> float:
     number, unit = _number_and_unit(text, "temperature")
     match unit.lstrip("°").upper():
         case "C":
-            return number
+            celsius = number
         case "F":
-            return (number - 32.0) / 1.8
-    raise WrongUsage(f"{quoted(text)}: unknown unit {quoted(unit)} of a temperature; write it like 35C or 95F.")
+            celsius = (number - 32.0) / 1.8
+        case _:
+            raise WrongUsage(f"{quoted(text)}: unknown unit {quoted(unit)} of a temperature; write it like 35C or 95F.")
+    if not COLDEST_C <= celsius <= HOTTEST_C:
+        raise WrongUsage(f"{quoted(text)} is no temperature of a cable; expected {COLDEST_C:g}C to {HOTTEST_C:g}C.")
+    return celsius
 
 
 def parse_loss_at(text: str) -> tuple[float, float]:

@@ -9,15 +9,15 @@ from feedpoint.line import ComplexArray, RealArray
 MOST_PASSIVE_MAGNITUDE = 1.01
 
 
-def reflection_above_unity(frequency_hz: RealArray, gamma: ComplexArray, where: str) -> list[Finding]:
-    """Finding about a measured reflection (F,) that no passive load shows; `where` names the end of the run."""
+def reflection_above_unity(frequency_hz: RealArray, gamma: ComplexArray, where: str, advice: str) -> list[Finding]:
+    """Finding about a stated reflection (F,) that no passive load shows; `where` names the end of the run."""
     excess = _excess(frequency_hz, gamma)
     if excess is None:
         return []
     message = (
         f"The reflection at {where} reaches {excess['gamma_magnitude']:.4g} at {excess['frequency_hz'] / 1e6:.6g} MHz, "
         f"above {MOST_PASSIVE_MAGNITUDE} at {excess['points']} point(s): nothing passive returns more than it "
-        "received. Repeat the calibration at the plane where the run begins; look for another transmitter on the air."
+        f"received. {advice}"
     )
     return [Finding("reflection-above-unity", "error", message, excess)]
 

@@ -50,14 +50,17 @@ def _quantity(option: str, metavar: str, parse: Callable[[str], float], text: st
 
 def _ratio(text: str) -> float:
     try:
-        return parse_number(text)
+        ratio = parse_number(text)
     except ValueError:
         raise WrongUsage(f"{quoted(text)} is not a number; expected a plain one such as 0.66.") from None
+    if not 0.0 <= ratio <= 1.0:
+        raise WrongUsage(f"{quoted(text)} is no share of the velocity of light; expected 0 to 1, such as 0.66.")
+    return ratio
 
 
 Sweeps: TypeAlias = Annotated[
     list[Path] | None,
-    typer.Argument(metavar="SWEEP...", help="Touchstone files (.s1p, .s2p ..., .ts).", show_default=False),
+    typer.Argument(metavar="SWEEP", help="Touchstone files (.s1p, .s2p ..., .ts).", show_default=False),
 ]
 OneSweep: TypeAlias = Annotated[Path, typer.Argument(metavar="SWEEP", help="Touchstone file (.s1p, .s2p ..., .ts).")]
 Readings: TypeAlias = Annotated[
@@ -70,7 +73,7 @@ Reference: TypeAlias = Annotated[
 ]
 Port: TypeAlias = Annotated[
     int | None,
-    typer.Option("--port", min=1, help="Port of a file with several, counted from 1."),
+    typer.Option("--port", metavar="N", min=1, help="Port of a file with several, counted from 1."),
 ]
 RunSheet: TypeAlias = Annotated[
     Path | None,

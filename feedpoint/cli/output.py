@@ -103,7 +103,7 @@ def _write_file(
     write_whole(out, _file_text(form, results, rows, presentation))
     lines = [line for result in results for line in presentation.summary(result)]
     count = sum(len(chosen.saved_gamma) for chosen in rows)
-    show([*lines, Line(one_line(f"wrote {count} rows to {out}"))])
+    show([*lines, Line(one_line(f"wrote {count} {'row' if count == 1 else 'rows'} to {out}"))])
 
 
 def _file_text(

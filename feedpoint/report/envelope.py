@@ -22,7 +22,7 @@ def envelope(result: FeedpointResult, rows: Rows, *, inspecting: bool = False) -
     return {
         "sweep": _sweep(result.sweep),
         "run": None if inspecting else _run(result.run),
-        "summary": _summary(result),
+        "summary": _summary(result, inspecting=inspecting),
         "points": [dict(zip(names, row, strict=True)) for row in zip(*values, strict=True)],
         "findings": [_finding(finding) for finding in (*result.findings, *rows.findings)],
     }
@@ -82,7 +82,8 @@ def _assumed(value: float | str, origin: str, where: str) -> Plain:
     return {"value": value, "origin": origin, "where": where}
 
 
-def _summary(result: FeedpointResult) -> Plain:
+def _summary(result: FeedpointResult, *, inspecting: bool) -> Plain:
+    """Readings at the antenna terminals; of `inspect`, which knows no run, at the shack end alone."""
     landmarks, shack = result.landmarks, result.shack_landmarks
     return {
         **_landmarks(landmarks),
@@ -93,7 +94,7 @@ def _summary(result: FeedpointResult) -> Plain:
                 "high_hz": own.band.high_hz,
                 "swr_limit": own.band.swr_limit,
                 "shack_worst_swr": _number(seen.worst_swr.value),
-                "feedpoint_worst_swr": _interval(own.worst_swr),
+                "feedpoint_worst_swr": _interval(Interval(None) if inspecting else own.worst_swr),
                 "verdict": None,
             }
             for own, seen in zip(landmarks.bands, shack.bands, strict=True)

@@ -4,6 +4,7 @@ import csv
 import io
 import json
 import os
+import stat
 import tempfile
 from collections.abc import Sequence
 from math import isnan
@@ -94,23 +95,35 @@ def write_whole(path: Path, text: str) -> None:
     """
     Write a file whole or not at all: to a temporary file beside it, which then takes its name.
 
+    A link is followed, and an existing file keeps its permissions; what is no file (a pipe, a device) is written to.
+
     Raises
     ------
     OutputRefused
         If the folder is missing or cannot be written to.
     """
+    content = text.encode("utf-8", errors="backslashreplace")
     try:
-        handle, temporary = tempfile.mkstemp(prefix=".feedpoint-", dir=path.parent)
-        try:
-            with os.fdopen(handle, "w", encoding="utf-8", errors="backslashreplace", newline="") as file:
-                file.write(text)
-            os.chmod(temporary, 0o666 & ~_umask())
-            os.replace(temporary, path)
-        except BaseException:
-            os.unlink(temporary)
-            raise
+        target = path.resolve()
+        if target.exists() and not target.is_file():
+            target.write_bytes(content)
+        else:
+            _replace(target, content)
     except OSError as problem:
         raise OutputRefused(f"cannot be written: {problem.strerror}.", source=str(path)) from None
+
+
+def _replace(target: Path, content: bytes) -> None:
+    mode = target.stat().st_mode if target.exists() else 0o666 & ~_umask()
+    handle, temporary = tempfile.mkstemp(prefix=".feedpoint-", dir=target.parent)
+    try:
+        with os.fdopen(handle, "wb") as file:
+            file.write(content)
+        os.chmod(temporary, stat.S_IMODE(mode))
+        os.replace(temporary, target)
+    except BaseException:
+        os.unlink(temporary)
+        raise
 
 
 def _umask() -> int:

@@ -57,11 +57,17 @@ def summary_of_sweep(result: FeedpointResult) -> list[Line]:
     ends = (plain_megahertz(result.frequency_hz[0]), plain_megahertz(result.frequency_hz[-1]))
     facts["points"] = f"{result.frequency_hz.size}, {ends[0]} to {ends[1]} MHz"
     lines += [Line(f"{key:<{_LABEL}}{one_line(value)}") for key, value in facts.items()]
-    lines += [Line(f"{'comment':<{_LABEL}}{one_line(comment)}") for comment in sweep.comments[:10]]
+    lines += [Line(f"{'comment':<{_LABEL}}{_cut(one_line(comment))}") for comment in sweep.comments[:10]]
     if len(sweep.comments) > 10:
         lines.append(Line(f"{'':<{_LABEL}}({len(sweep.comments) - 10} more comment lines)"))
     lines += [Line(""), _row("", "at the shack end", style="bold")]
     return [*lines, *_readings(result, [result.shack_landmarks]), Line("")]
+
+
+def _cut(text: str) -> str:
+    """A text as far as it fits beside its label into 80 columns."""
+    room = 80 - _LABEL
+    return text if len(text) <= room else text[: room - 3] + "..."
 
 
 def _row(label: str, first: str, second: str = "", style: str = "") -> Line:

@@ -9,9 +9,7 @@ from feedpoint.line import RealArray
 from feedpoint.line.loss_law import LAW_TEMPERATURE_C
 from feedpoint.run.cable import CableSection
 from feedpoint.run.sections import Section, SectionTwoPort, Surroundings
-
-# Physical sense, not a limit of the formulas: no cable is swept outside.
-COLDEST_C, HOTTEST_C = -100.0, 250.0
+from feedpoint.units import COLDEST_C, HOTTEST_C
 
 
 class Band(NamedTuple):

@@ -76,4 +76,5 @@ def _refusal(problem: ValidationError, source: str, place: str) -> RunRefused:
     if first["type"] == "extra_forbidden":
         return RunRefused(f"unknown key {quoted(str(names[-1]))}.", source=source, key=", ".join([place, *steps[:-1]]))
     expected = first["msg"].replace("Input should be", "expected").replace("should have", "expected")
-    return RunRefused(f"found {quoted(repr(first['input']))}, {expected}.", source=source, key=key)
+    found = first["input"] if isinstance(first["input"], str) else repr(first["input"])
+    return RunRefused(f"found {quoted(found)}, {expected}.", source=source, key=key)

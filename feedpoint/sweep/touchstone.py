@@ -34,8 +34,10 @@ from feedpoint.sweep.touchstone_header import (
 )
 from feedpoint.sweep.touchstone_records import BLANKS, Records, parse_records
 
-# Version-1 Z data are normalised to R; a median resistance above ten times R means that plain ohms were written.
-_PLAIN_OHM_RATIO = 10.0
+# Version-1 Z and Y are normalised to R. A median resistance of ten times R, or a median impedance of twenty times, is
+# no antenna over a band: plain ohms or siemens were written.
+_PLAIN_RESISTANCE = 10.0
+_PLAIN_SIZE = 20.0
 
 
 class NetworkData(NamedTuple):
@@ -197,6 +199,8 @@ def _next_place(header: Header, number: int, line: str, place: str) -> str:
         raise header.refuse(f"{quoted(line)} stands {'after' if after_data else 'before'} the network data.", number)
     if header.stated_options is None:
         raise header.refuse(f"{quoted(line)} before the option line; expected '# ...' after [Version].", number)
+    if keyword in ("network data", "noise data", "end") and header.argument(keyword):
+        raise header.refuse(f"{quoted(line)}: expected nothing after the keyword on its line.", number)
     places = {"network data": "data", "noise data": "noise", "end": "end", "reference": "reference"}
     return places.get(keyword, "header")
 
@@ -221,14 +225,14 @@ def _check_header(header: Header, ports_of_name: int | None, last_line: int) -> 
 def _scattering(header: Header, references: RealArray, records: Records) -> ComplexArray:
     """Scattering parameters (F, n, n); version-1 Z and Y are normalised to R already, version-2 ones are not."""
     values, parameter = records.values, header.options.parameter
-    if parameter == "Z":
-        if header.is_version_2:
-            values = normalised_impedance(values, references)
-        values = scattering_from_normalised_impedance(values)
-    elif parameter == "Y":
-        if header.is_version_2:
-            values = normalised_admittance(values, references)
-        values = scattering_from_normalised_admittance(values)
+    # What overflows is refused below.
+    with np.errstate(all="ignore"):
+        if parameter == "Z":
+            values = normalised_impedance(values, references) if header.is_version_2 else values
+            values = scattering_from_normalised_impedance(values)
+        elif parameter == "Y":
+            values = normalised_admittance(values, references) if header.is_version_2 else values
+            values = scattering_from_normalised_admittance(values)
     infinite = ~np.isfinite(values).all(axis=(1, 2))
     if np.any(infinite):
         line = int(records.line[np.argmax(infinite)])
@@ -237,14 +241,19 @@ def _scattering(header: Header, references: RealArray, records: Records) -> Comp
 
 
 def _doubts_about_values(header: Header, records: Records) -> list[str]:
-    if header.is_version_2 or header.options.parameter != "Z" or header.options.reference_ohm == 1.0:
+    parameter = header.options.parameter
+    if header.is_version_2 or parameter == "S" or header.options.reference_ohm == 1.0:
         return []
-    resistance = float(np.median(records.values[:, 0, 0].real))
-    if resistance < _PLAIN_OHM_RATIO:
+    values = records.values[:, 0, 0]
+    size, resistance = float(np.median(np.abs(values))), float(np.median(values.real))
+    plain_ohms = parameter == "Z" and (resistance >= _PLAIN_RESISTANCE or size >= _PLAIN_SIZE)
+    plain_siemens = parameter == "Y" and size <= 1.0 / _PLAIN_SIZE
+    if not (plain_ohms or plain_siemens):
         return []
+    unit = "ohms" if plain_ohms else "siemens"
     return [
-        f"version-1 Z data are normalised to R, but a median of {resistance:.3g} looks like plain ohms; if it is, "
-        "write 'R 1' in the option line of a copy"
+        f"version-1 {parameter} data are normalised to R, but a median of {size:.3g} looks like plain {unit}; if it "
+        "is, write 'R 1' in the option line of a copy"
     ]
 
 

@@ -25,19 +25,16 @@ _FORMATS = ("RI", "MA", "DB")
 _VERSIONS = ("2.0", "2.1")
 # Room for every network that has a sweep in it; a wrong digit must not ask for gigabytes.
 MOST_PORTS = 99
-# Keywords of version 2 that may stand before [Network Data], in the spelling of the standard.
-_HEADER_KEYWORDS = {
-    name.lower(): name
-    for name in (
-        "Number of Ports",
-        "Two-Port Data Order",
-        "Number of Frequencies",
-        "Number of Noise Frequencies",
-        "Reference",
-        "Matrix Format",
-        "Mixed-Mode Order",
-    )
-}
+# Keywords of version 2 between [Version] and the data, in lower case.
+_HEADER_KEYWORDS = (
+    "number of ports",
+    "two-port data order",
+    "number of frequencies",
+    "number of noise frequencies",
+    "reference",
+    "matrix format",
+    "mixed-mode order",
+)
 
 
 @dataclass

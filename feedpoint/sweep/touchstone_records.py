@@ -95,13 +95,11 @@ def _collect(header: Header, data: Iterable[tuple[int, str]]) -> _Collected:
 
 def _is_noise(header: Header, numbers: list[float], collected: _Collected) -> bool:
     """Version 1 tells noise data of a two-port by their five numbers and a frequency that falls back."""
-    return (
-        header.ports == 2
-        and not header.is_version_2
-        and len(numbers) == _NOISE_NUMBERS
-        and len(collected.numbers) > 0
-        and numbers[0] <= collected.numbers[-1][0]
-    )
+    if header.ports != 2 or header.is_version_2 or len(numbers) != _NOISE_NUMBERS or not collected.numbers:
+        return False
+    # In a sweep that falls anyway, five numbers are a record that was cut short.
+    falling = len(collected.numbers) > 1 and collected.numbers[-1][0] < collected.numbers[-2][0]
+    return numbers[0] <= collected.numbers[-1][0] and not falling
 
 
 def _wrong_count(header: Header, collected: _Collected, expected: int, texts: dict[int, str]) -> Exception:

@@ -203,6 +203,51 @@ def test_pipe_that_closes_early_is_no_traceback(place):
     assert "BrokenPipe" not in process.stderr
 
 
+@pytest.mark.parametrize(
+    ("redirection", "code", "said"),
+    [
+        (">/dev/full", 3, "cannot be written: No space left"),
+        (">&-", 0, ""),
+        ("2>&-", 0, ""),
+        (">/dev/full 2>/dev/full", 3, ""),
+    ],
+)
+def test_streams_that_cannot_be_written_to(place, redirection, code, said):
+    command = f"'{sys.executable}' -m feedpoint deembed a.s1p --run run.toml --all {redirection}"
+    shell = ["bash", "-c", command]
+    process = subprocess.run(shell, cwd=place, capture_output=True, text=True, timeout=60, check=False)
+    assert process.returncode == code
+    assert said in process.stderr
+    assert "Traceback" not in process.stderr
+    assert "Exception" not in process.stderr
+
+
+def test_out_keeps_permissions_follows_links_and_writes_to_pipes(place):
+    (place / "target.csv").write_text("old", encoding="ascii")
+    (place / "target.csv").chmod(0o600)
+    (place / "link.csv").symlink_to("target.csv")
+    arguments = ("deembed", "a.s1p", "--run", "run.toml", "--at", "14MHz", "--out")
+    assert "wrote 1 row to" in run_feedpoint(*arguments, "link.csv", cwd=place).stdout
+    assert (place / "link.csv").is_symlink()
+    assert (place / "target.csv").stat().st_mode & 0o777 == 0o600
+    assert (place / "target.csv").read_text(encoding="ascii").startswith("frequency_hz,")
+    os.mkfifo(place / "pipe.csv")
+    with subprocess.Popen(["cat", place / "pipe.csv"], stdout=subprocess.PIPE, text=True) as reader:
+        assert run_feedpoint(*arguments, "pipe.csv", cwd=place).returncode == 0
+        assert reader.communicate(timeout=30)[0].startswith("frequency_hz,")
+    assert not (place / "pipe.csv").is_file()
+
+
+def test_inspect_claims_nothing_about_the_antenna(place):
+    arguments = ("inspect", "a.s1p", "--band", "14MHz-14.2MHz", "--at", "14.0033MHz")
+    envelope = no_nan(run_feedpoint(*arguments, "--format", "json", cwd=place).stdout)
+    (band,) = envelope["summary"]["bands"]
+    assert band["feedpoint_worst_swr"] == {"value": None, "low": None, "high": None}
+    assert band["shack_worst_swr"] > 1
+    assert "antenna" not in json.dumps(envelope["findings"])
+    assert "14.0033 " in run_feedpoint(*arguments, cwd=place).stdout
+
+
 def test_interrupt_is_no_traceback(place):
     os.mkfifo(place / "slow.s1p")
     command = [sys.executable, "-m", "feedpoint", "deembed", "slow.s1p", "--run", "run.toml"]

@@ -4,7 +4,22 @@ import numpy as np
 import pytest
 
 import feedpoint
-from feedpoint import AnalyzerErrors, Run, Sweep, SweepRefused, WrongUsage, deembed, embed, parse_run_sheet
+from feedpoint import (
+    AnalyzerErrors,
+    Assumed,
+    CableSection,
+    LossLaw,
+    LumpedSection,
+    Run,
+    RunRefused,
+    Sweep,
+    SweepRefused,
+    TransformerSection,
+    WrongUsage,
+    deembed,
+    embed,
+    parse_run_sheet,
+)
 from feedpoint.result import COLUMNS
 from feedpoint.selection import RowChoice, chosen_rows, telling_points
 
@@ -151,6 +166,36 @@ def test_findings_about_the_described_run():
     assert "poor-loss-fit" in codes(deembed(dipole(), parse_run_sheet(poor)))
 
 
+@pytest.mark.parametrize("reference_ohm", [0.0, -50.0, np.nan, np.inf])
+def test_swr_refers_to_a_positive_resistance(reference_ohm):
+    for computation in (deembed, embed):
+        with pytest.raises(WrongUsage):
+            computation(dipole(), RUN, swr_reference_ohm=reference_ohm)
+
+
+def test_trials_are_refused_rather_than_ignored():
+    with pytest.raises(WrongUsage, match="Monte Carlo"):
+        deembed(dipole(), RUN, 2000)
+    assert deembed(dipole(), RUN, trials=None, seed=0).frequency_hz.size == 201
+
+
+@pytest.mark.parametrize(
+    "build",
+    [
+        lambda: LumpedSection("x", "serial", resistance_ohm=Assumed(10.0)),
+        lambda: LumpedSection("x", "shunt", inductance_h=Assumed(0.0)),
+        lambda: LumpedSection("x", "series"),
+        lambda: TransformerSection("x", Assumed(0.0)),
+        lambda: CableSection("x", Assumed(-50.0), Assumed(0.66), Assumed(1.0), Assumed(LossLaw(1.0))),
+        lambda: CableSection("x", Assumed(50.0), Assumed(0.66), Assumed(-1.0), Assumed(LossLaw(1.0))),
+        lambda: CableSection("x", Assumed(50.0), Assumed(0.0), Assumed(1.0), Assumed(LossLaw(1.0))),
+    ],
+)
+def test_sections_that_cannot_be_are_refused_in_python_too(build):
+    with pytest.raises(RunRefused, match=r"^x: "):
+        build()
+
+
 @pytest.mark.parametrize(
     ("frequency", "gamma", "reference", "fragment"),
     [
@@ -160,6 +205,9 @@ def test_findings_about_the_described_run():
         ([1e6], [0.1], 0.0, "reference"),
         ([-1e6], [0.1], 50.0, "not positive"),
         ([2e6, 1e6], [0.1, 0.1], 50.0, "do not rise at point 2"),
+        (["x"], [0.1], 50.0, "no numbers"),
+        ([1e6], [0.1], None, "no numbers"),
+        ([1e6], [1e200], 50.0, "a reflection of 1e\\+200 is none"),
     ],
 )
 def test_arrays_that_make_no_sweep_are_refused(frequency, gamma, reference, fragment):
@@ -169,8 +217,11 @@ def test_arrays_that_make_no_sweep_are_refused(frequency, gamma, reference, frag
 
 def test_records_are_read_only():
     sweep = dipole()
-    with pytest.raises(ValueError, match="read-only"):
-        sweep.gamma[0] = 0.0
+    result = deembed(sweep, RUN)
+    arrays = [sweep.gamma, result.impedance_ohm, result.gamma, result.planes.voltage, *result.columns.values()]
+    for array in arrays:
+        with pytest.raises(ValueError, match="read-only"):
+            array[0] = 0.0
     with pytest.raises(AttributeError):
         sweep.reference_ohm = 75.0
     assert isinstance(feedpoint.deembed(sweep, RUN), feedpoint.FeedpointResult)

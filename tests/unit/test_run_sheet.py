@@ -41,6 +41,31 @@ def test_loss_points_in_feet_and_metres_are_one_and_the_same():
     assert in_feet.loss.value.conductor == pytest.approx(in_metres.loss.value.conductor, rel=1e-12)
 
 
+@pytest.mark.parametrize("term", ["conductor_loss = 0.6", "dielectric_loss = 0.008", "floor_loss = 0.05"])
+def test_one_loss_term_beside_a_catalogue_cable_is_refused(term):
+    with pytest.raises(RunRefused, match="beside a cable of the catalogue"):
+        section(f'cable = "RG-213/U"\nlength_m = 100\n{term}\n')
+
+
+def test_both_loss_terms_replace_the_catalogue_law():
+    cable = section('cable = "RG-213/U"\nlength_m = 100\nconductor_loss = 0.7\ndielectric_loss = 0.01\n')
+    law = cable.loss.value
+    assert (law.conductor, law.dielectric, law.floor) == (0.7, 0.01, 0.0)
+    assert cable.loss.origin == "sheet"
+
+
+def test_steel_core_of_a_section_counts_for_the_points_of_the_catalogue(tmp_path):
+    (tmp_path / "own.toml").write_text(
+        '[[cable]]\nname = "thin"\nz0_ohm = 50\nvelocity_factor = 0.66\n'
+        "loss = [{mhz=1,db_per_100m=6.2},{mhz=10,db_per_100m=10.8},{mhz=100,db_per_100m=27.6}]\n",
+        encoding="ascii",
+    )
+    text = '[run]\ncables_file = "own.toml"\n[[section]]\ncable = "thin"\nlength_m = 1\n'
+    plain, steel = (parse_run_sheet(text + more, folder=tmp_path) for more in ("", "steel_core = true\n"))
+    assert plain.sections[0].loss.value.floor == 0.0
+    assert steel.sections[0].loss.value.floor > 1.0
+
+
 def test_floor_term_joins_only_for_steel_cores():
     points = "z0_ohm=75\nvelocity_factor=0.66\nlength_m=1\nloss=[{mhz=1,db_per_100m=2.0},{mhz=10,db_per_100m=3.6},"
     points += "{mhz=100,db_per_100m=11.2}]\n"
