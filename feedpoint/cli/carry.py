@@ -22,7 +22,11 @@ PROGRESS_AFTER_S = 1.0
 
 
 def _command(direction: str, description: str) -> Callable[..., None]:
-    """Return the command for a direction; both take the same options."""
+    """
+    Return the command for a direction; both take the same options.
+
+    Long, because typer reads the options off one signature.
+    """
 
     def carry(
         sweeps: option.Sweeps = None,

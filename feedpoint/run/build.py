@@ -52,22 +52,8 @@ def section_of_table(table: dict[str, Any], place: str, context: BuildContext) -
     RunRefused
         With file, section and key, for anything that makes no section.
     """
-    if measured := next((key for key in table if key in _KEYS_OF_MEASURED), None):
-        raise context.refuse(
-            f"{quoted(measured)} makes it a measured section, which this version does not read yet; expected a cable, "
-            "two_port, lumped or transformer section.",
-            place,
-        )
-    kinds = list(dict.fromkeys(_KIND_OF_KEY[key] for key in table if key in _KIND_OF_KEY))
-    if len(kinds) > 1:
-        keys = [next(key for key in table if _KIND_OF_KEY.get(key) == kind) for kind in kinds[:2]]
-        raise context.refuse(
-            f"{quoted(keys[0])} belongs to a {kinds[0]} section and {quoted(keys[1])} to a {kinds[1]} section; "
-            "expected one kind. Make two sections of it.",
-            place,
-        )
-    kind = kinds[0] if kinds else "cable"
-    form = checked(_FORMS[kind], table, context.source, place, _KIND_OF_KEY)
+    form_of_kind = _FORMS[_kind(table, place, context)]
+    form = checked(form_of_kind, table, context.source, place, _KIND_OF_KEY)
     name = table.get("name", "")
     match form:
         case TwoPortForm():
@@ -75,11 +61,32 @@ def section_of_table(table: dict[str, Any], place: str, context: BuildContext) -
         case LumpedForm():
             return _lumped(form, name or place, place, context)
         case TransformerForm():
-            ratio = context.said(form.impedance_ratio, place)
-            return TransformerSection(name or place, ratio)
+            return TransformerSection(name or place, context.said(form.impedance_ratio, place))
         case CableForm():
             return _cable(form, name or form.cable or place, place, context)
-    raise AssertionError(kind)
+    raise AssertionError(form)
+
+
+def _kind(table: dict[str, Any], place: str, context: BuildContext) -> str:
+    """Kind of section that the keys of a table belong to: a cable where none tells."""
+    if measured := next((key for key in table if key in _KEYS_OF_MEASURED), None):
+        raise context.refuse(
+            f"{quoted(measured)} makes it a measured section, which this version does not read yet; expected a cable, "
+            "two_port, lumped or transformer section.",
+            place,
+        )
+    first_keys: dict[str, str] = {}
+    for key in table:
+        if key in _KIND_OF_KEY:
+            first_keys.setdefault(_KIND_OF_KEY[key], key)
+    if len(first_keys) > 1:
+        (kind, key), (other_kind, other_key) = list(first_keys.items())[:2]
+        raise context.refuse(
+            f"{quoted(key)} belongs to a {kind} section and {quoted(other_key)} to a {other_kind} section; expected "
+            "one kind. Make two sections of it.",
+            place,
+        )
+    return next(iter(first_keys), "cable")
 
 
 def _two_port(form: TwoPortForm, name: str, place: str, context: BuildContext) -> TwoPortSection:
@@ -110,31 +117,35 @@ def _cable(form: CableForm, name: str, place: str, context: BuildContext) -> Cab
     length_m = _length_m(form, place, context)
     delay_s = _delay_s(form, length_m, place, context)
     velocity_factor = _velocity_factor(form, entry, length_m, delay_s, place, context)
-    z0_ohm = _figure(form, "z0_ohm", entry, place, context)
-    tolerances = _tolerances(form, place, context)
-    for key, tolerance, value in (
-        ("length_tolerance_m", tolerances.length_m, length_m),
-        ("z0_tolerance_ohm", tolerances.z0_ohm, z0_ohm.value),
-        ("velocity_factor_tolerance", tolerances.velocity_factor, velocity_factor.value),
-        ("delay_tolerance_ns", tolerances.delay_s, delay_s),
-    ):
-        if tolerance and value is not None and tolerance >= value:
-            raise context.refuse("the tolerance is not smaller than the value itself.", f"{place}, {key}")
-    own = ratings(form)
-    known = entry.ratings if entry else Ratings()
     tempco = form.delay_tempco_ppm_per_k
-    return CableSection(
+    own, known = ratings(form), entry.ratings if entry else Ratings()
+    section = CableSection(
         name,
-        z0_ohm,
+        _figure(form, "z0_ohm", entry, place, context),
         velocity_factor,
         context.said(length_m, place),
         _loss(form, entry, velocity_factor.value, place, context),
         context.said(delay_s, f"{place}, delay_ns") if delay_s is not None else None,
         context.said(tempco, place) if tempco is not None else _catalogue_tempco(entry),
-        tolerances,
+        _tolerances(form, place, context),
         Ratings(own.max_voltage_rms_v or known.max_voltage_rms_v, own.max_power_w or known.max_power_w),
         context.said(entry.name, f"{place}, cable") if entry else None,
     )
+    _check_tolerances(section, place, context)
+    return section
+
+
+def _check_tolerances(section: CableSection, place: str, context: BuildContext) -> None:
+    """Refuse a tolerance that reaches down to 0, where no line is left."""
+    tolerances = section.tolerances
+    for key, tolerance, figure in (
+        ("length_tolerance_m", tolerances.length_m, section.length_m),
+        ("z0_tolerance_ohm", tolerances.z0_ohm, section.z0_ohm),
+        ("velocity_factor_tolerance", tolerances.velocity_factor, section.velocity_factor),
+        ("delay_tolerance_ns", tolerances.delay_s, section.delay_s),
+    ):
+        if tolerance and figure is not None and tolerance >= figure.value:
+            raise context.refuse("the tolerance is not smaller than the value itself.", f"{place}, {key}")
 
 
 def _catalogue_tempco(entry: CatalogueEntry | None) -> Assumed[float]:

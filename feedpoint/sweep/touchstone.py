@@ -163,16 +163,11 @@ def _take_options(header: Header, number: int, line: str) -> None:
 def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) -> None:
     header = sections.header
     place = "header"
-    opened = 0
-    for number, line in content:
+    for number, line in _without_information(content, header):
         if place == "end":
             sections.doubts.append(f"line {number} and what follows stand after [End] and were ignored")
             return
-        lowered = " ".join(line.lower().split())
-        if place == "information" or lowered == "[begin information]":
-            opened = opened or number
-            place = "header" if lowered == "[end information]" else "information"
-        elif line.startswith("["):
+        if line.startswith("["):
             place = _next_place(header, number, line, place)
             sections.noise_line = number if place == "noise" else sections.noise_line
         elif line.startswith("#") and place == "header":
@@ -185,10 +180,23 @@ def _split_version_2(sections: _Sections, content: Iterator[tuple[int, str]]) ->
             sections.reference_lines.append((number, line))
         elif place != "noise":
             raise header.refuse(f"{quoted(line)} before [Network Data]; expected a keyword.", number)
-    if place == "information":
-        raise header.refuse("[Begin Information] has no [End Information]; the data cannot be found.", opened)
     if place != "end":
         sections.doubts.append("[End] is missing: the file may be cut short")
+
+
+def _without_information(content: Iterable[tuple[int, str]], header: Header) -> Iterator[tuple[int, str]]:
+    """The lines outside [Begin Information] ... [End Information], where anything may stand."""
+    opened: int | None = None
+    for number, line in content:
+        lowered = " ".join(line.lower().split())
+        if opened is None and lowered == "[begin information]":
+            opened = number
+        elif opened is None:
+            yield number, line
+        elif lowered == "[end information]":
+            opened = None
+    if opened is not None:
+        raise header.refuse("[Begin Information] has no [End Information]; the data cannot be found.", opened)
 
 
 def _next_place(header: Header, number: int, line: str, place: str) -> str:
