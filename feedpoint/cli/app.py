@@ -12,6 +12,7 @@ app = typer.Typer(
     help="The impedance at the antenna terminals, from a sweep taken at the equipment end of the coax run.",
     epilog="Exit codes: 0 done, 2 wrong usage, 3 input refused, 4 with --strict where a finding is an error.",
     no_args_is_help=True,
+    context_settings={"help_option_names": ["-h", "--help"]},
     add_completion=False,
     # Plain help and error texts: they read the same in a log, and need 40 ms less than drawn ones.
     rich_markup_mode=None,

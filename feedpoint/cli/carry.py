@@ -81,8 +81,22 @@ def _command(direction: str, description: str) -> Callable[..., None]:
     return carry
 
 
-deembed = _command("deembed", "Impedance at the antenna terminals, from sweeps at the shack end of the run.")
-embed = _command("embed", "What the shack end shows of an impedance that is known at the antenna terminals.")
+deembed = _command(
+    "deembed",
+    """
+    Impedance at the antenna terminals.
+
+    From sweeps that were taken at the shack end of the coax run, and a description of the run.
+    """,
+)
+embed = _command(
+    "embed",
+    """
+    What the shack end shows of a known antenna.
+
+    From impedances that are known at the antenna terminals, and a description of the run.
+    """,
+)
 
 _Read = Callable[[], "Sweep"]
 

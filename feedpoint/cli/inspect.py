@@ -22,7 +22,11 @@ def inspect(
     strict: option.Strict = False,
     quiet: option.Quiet = False,
 ) -> None:
-    """What a sweep file was understood to be, and the values at the shack end."""
+    """
+    What a sweep file was understood to be.
+
+    And what it shows at the shack end, before any run is taken off.
+    """
     output = OutputOptions(format_, out, strict, quiet)
     output.check([sweep])
     choice = RowOptions(at, from_, to, every, all_rows).choice()
