@@ -5,7 +5,7 @@ Every refusal of the package, in one tree.
       InputRefused              what was read is not what it must be (exit code 3 of the command)
         SweepRefused            a sweep file, or arrays that make no sweep
         RunRefused              a run sheet, catalogue, two-port file, or figures that make no run
-        OutputRefused           a result that cannot be written where or how it was asked for
+      OutputRefused             a result that cannot be written where or how it was asked for (exit code 3)
       WrongUsage                a request that contradicts itself or its sweep (exit code 2 of the command)
 
 A message reads *where: what was found, what was expected. What to do.* The place is kept as attributes too, so that
@@ -46,7 +46,7 @@ class RunRefused(InputRefused):
     """A run sheet, catalogue, two-port file, or figures that make no run."""
 
 
-class OutputRefused(InputRefused):
+class OutputRefused(FeedpointError):
     """A result that cannot be written where or how it was asked for."""
 
 

@@ -11,17 +11,18 @@ from typing import Literal, NamedTuple
 import numpy as np
 
 from feedpoint.interval import Interval
-from feedpoint.line import ComplexArray, RealArray
+from feedpoint.line import ComplexArray, RealArray, RealLike
 from feedpoint.line.reflection import impedance_from_reflection, swr_from_reflection
 from feedpoint.run.record import Band
 
 # |Gamma|^2 at SWR 2.
 _SWR_2 = 1.0 / 9.0
-# Im Gamma must pass from one side to the other of a strip of so many standard deviations of the sweep's own scatter,
-# else noise around a resistive load would be a row of resonances: 4.5 are exceeded once in 150,000 points. The
-# half-width is at most 0.005, since of a coarse sweep even a clean antenna looks like scatter.
+# Im Gamma, as far as the analyzer's noise has grown on its way, must pass from one side to the other of a strip of so
+# many standard deviations of its own scatter, else noise around a resistive load would be a row of resonances: 4.5 are
+# exceeded once in 150,000 points. The half-width is at most 0.02, the scatter of a poor analyzer: of a coarse sweep
+# even a clean antenna looks like scatter.
 _SCATTER_MULTIPLE = 4.5
-_WIDEST_STRIP = 0.005
+_WIDEST_STRIP = 0.02
 # Rounding of the de-embedding, in case the scatter is none.
 _NARROWEST_STRIP = 1e-12
 # Orders of differences that the scatter is estimated from, with (2 k)!/(k!)^2.
@@ -69,6 +70,7 @@ def landmarks_of(
     reference_ohm: float,
     swr_gamma: ComplexArray,
     bands: Sequence[Band],
+    error_growth: RealArray | None = None,
 ) -> Landmarks:
     """
     Read the landmarks off a reflection.
@@ -81,6 +83,8 @@ def landmarks_of(
     swr_gamma : complex array (F,)
         The same reflection against the resistance that SWR refers to.
     bands : bands to look into
+    error_growth : array (F,), optional
+        By how much noise is larger here than where it arose, so that it can be told from an antenna.
     """
     gamma, swr_gamma = (np.where(np.isfinite(values), values, _BEYOND_ALL) for values in (gamma, swr_gamma))
     curve = _Curve(frequency_hz, swr_gamma)
@@ -88,7 +92,7 @@ def landmarks_of(
     minimum_hz, minimum = curve.extreme(low, high, np.argmin)
     edges = (None, None) if minimum > _SWR_2 else curve.edges(minimum_hz, _SWR_2)
     return Landmarks(
-        tuple(_resonances(frequency_hz, gamma, reference_ohm)),
+        tuple(_resonances(frequency_hz, gamma, reference_ohm, 1.0 if error_growth is None else error_growth)),
         Interval(_swr(minimum)),
         Interval(minimum_hz),
         Interval(edges[0]),
@@ -202,9 +206,13 @@ def real_roots(polynomial: RealArray, low: float, high: float) -> list[float]:
     return sorted(np.clip(inside, low, high).tolist())
 
 
-def _resonances(frequency_hz: RealArray, gamma: ComplexArray, reference_ohm: float) -> Iterator[Resonance]:
+def _resonances(
+    frequency_hz: RealArray, gamma: ComplexArray, reference_ohm: float, error_growth: RealLike
+) -> Iterator[Resonance]:
     """Resonances of a reflection, rising in frequency."""
-    for passage in passages(gamma.imag, _strip(gamma.imag)):
+    # Divided by the growth, noise is as large at every frequency as the analyzer made it.
+    as_measured = gamma.imag / error_growth
+    for passage in passages(as_measured, _strip(as_measured)):
         at_hz, real = _zero(frequency_hz, gamma, passage)
         resistance = impedance_from_reflection(np.array(complex(real, 0.0)), reference_ohm).real
         # dX/df has the sign of d Im Gamma/df where Gamma is real: dZ/dGamma = 2 R/(1 - Gamma)^2 is positive there.

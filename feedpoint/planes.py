@@ -60,6 +60,17 @@ class Planes:
         return read_only(self.gamma_against(self.reference_ohm))
 
     @cached_property
+    def error_growth(self) -> RealArray:
+        """
+        By how much an error of the known reflection is larger at every plane (S + 1, ..., F).
+
+        A reflection is a bilinear function of another; with a wave of 1 V at the known end its derivative has the
+        magnitude of 1 V^2 over the square of the wave towards the antenna, for everything reciprocal.
+        """
+        wave = np.abs(self.voltage + self.reference_ohm * self.current) / 2.0
+        return read_only(1.0 / np.maximum(wave, np.finfo(float).tiny ** 0.5) ** 2)
+
+    @cached_property
     def impedance_ohm(self) -> ComplexArray:
         """Impedance seen towards the antenna at every plane (S + 1, ..., F) [ohm]; infinite at an open circuit."""
         return read_only(ratio(self.voltage, self.current))
@@ -134,11 +145,12 @@ def _two_ports(run: Run, frequency_hz: RealArray, reference_ohm: float) -> tuple
     for number, (section, two_port) in enumerate(zip(run.sections, two_ports, strict=True), start=1):
         if np.any(two_port.matched_loss_db > _MOST_LOSS_DB):
             at = int(np.nanargmax(two_port.matched_loss_db))
+            label = f"section {number}"
             raise RunRefused(
                 f"a matched loss of {two_port.matched_loss_db[at]:.4g} dB at {frequency_hz[at] / 1e6:g} MHz; expected "
                 f"at most {_MOST_LOSS_DB:g} dB, beyond which no reflection comes back. Check its length and loss.",
                 source=run.source,
-                key=f"section {number} ({section.name})",
+                key=label if section.name == label else f"{label} ({section.name})",
             )
     return two_ports
 

@@ -13,6 +13,8 @@ _QUARTER_TURN = 0.125
 _TRUSTED_BEYOND = 3.0
 _POOR_FIT = 0.05
 _MISMATCH = 0.10
+# Losses of ideal elements come out within this of 0.
+_ROUNDING_DB = 1e-9
 
 
 def coarse_step(frequency_hz: RealArray, electrical_length: RealArray) -> list[Finding]:
@@ -87,3 +89,16 @@ def _outside(section: CableSection, label: str, frequency_hz: RealArray) -> list
         "points_high_hz": valid[1],
     }
     return [Finding("outside-loss-data", "warning", message, figures)]
+
+
+def two_port_gain(run: Run, matched_loss_db: RealArray) -> list[Finding]:
+    """Findings about sections, `matched_loss_db` (S, F) [dB], that give more than they receive, or cannot be told."""
+    findings = []
+    for number, (section, losses) in enumerate(zip(run.sections, matched_loss_db, strict=True), start=1):
+        if not np.all(losses >= -_ROUNDING_DB):
+            message = (
+                f"Section {number} ({section.name}) has no loss between matched ends at some frequencies, or less than "
+                "none: a rest of its calibration. Total losses are that much off."
+            )
+            findings.append(Finding("two-port-gain", "warning", message, {"section": section.name}))
+    return findings

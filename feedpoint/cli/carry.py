@@ -44,6 +44,7 @@ def _command(direction: str, description: str) -> Callable[..., None]:
         velocity_factor_tolerance: option.VelocityFactorTolerance = None,
         cables_file: option.CablesFile = None,
         temperature: option.Temperature = None,
+        analyzer: option.Analyzer = None,
         band: option.Bands = None,
         at: option.At = None,
         from_: option.From = None,
@@ -66,9 +67,10 @@ def _command(direction: str, description: str) -> Callable[..., None]:
             loss_tolerance,
             velocity_factor_tolerance,
         )
-        run_options = RunOptions(run, one_cable, cables_file, temperature, band)
+        run_options = RunOptions(run, one_cable, cables_file, temperature, analyzer, band)
         output = OutputOptions(format_, out, strict, quiet)
-        output.check(sweeps or [], [run, cables_file])
+        output.check(sweeps or [])
+        output.check_inputs(path for path in (run, cables_file, analyzer) if path is not None)
         choice = RowOptions(at, from_, to, every, all_rows).choice()
         results = _results(direction, _sources(sweeps, reading, reference, port), run_options, swr_reference, quiet)
         from feedpoint.report.summary import summary_of_ends

@@ -20,6 +20,9 @@ def main() -> None:
     except BrokenPipeError:
         # Whoever read our output (head, a pager) has enough.
         code = NOT_WRITTEN
+    except MemoryError:
+        _say("not enough memory for this.")
+        code = REFUSED
     except OSError as problem:
         # Files that are read or written refuse in their own words; what is left is stdout itself.
         _say(f"the output cannot be written: {problem.strerror}.")

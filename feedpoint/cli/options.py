@@ -50,11 +50,22 @@ def _quantity(option: str, metavar: str, parse: Callable[[str], float], text: st
 
 def _ratio(text: str) -> float:
     try:
-        ratio = parse_number(text)
+        return parse_number(text)
     except ValueError:
         raise WrongUsage(f"{quoted(text)} is not a number; expected a plain one such as 0.66.") from None
-    if not 0.0 <= ratio <= 1.0:
+
+
+def _velocity_factor(text: str) -> float:
+    ratio = _ratio(text)
+    if not 0.0 < ratio <= 1.0:
         raise WrongUsage(f"{quoted(text)} is no share of the velocity of light; expected 0 to 1, such as 0.66.")
+    return ratio
+
+
+def _tolerance(text: str) -> float:
+    ratio = _ratio(text)
+    if ratio < 0.0:
+        raise WrongUsage(f"{quoted(text)}: a tolerance must not be negative.")
     return ratio
 
 
@@ -93,7 +104,7 @@ Z0: TypeAlias = Annotated[
 ]
 VelocityFactor: TypeAlias = Annotated[
     float | None,
-    _quantity("--velocity-factor", "V", _ratio, "Its velocity factor, e.g. 0.66."),
+    _quantity("--velocity-factor", "V", _velocity_factor, "Its velocity factor, e.g. 0.66."),
 ]
 LossAt: TypeAlias = Annotated[
     list[str] | None,
@@ -109,7 +120,7 @@ LossTolerance: TypeAlias = Annotated[
 ]
 VelocityFactorTolerance: TypeAlias = Annotated[
     float | None,
-    _quantity("--velocity-factor-tolerance", "V", _ratio, "Half-width, e.g. 0.01."),
+    _quantity("--velocity-factor-tolerance", "V", _tolerance, "Half-width, e.g. 0.01."),
 ]
 CablesFile: TypeAlias = Annotated[
     Path | None,
@@ -118,6 +129,10 @@ CablesFile: TypeAlias = Annotated[
 Temperature: TypeAlias = Annotated[
     float | None,
     _quantity("--temperature", "T", parse_temperature_c, "Of the cable, e.g. 35C or 95F."),
+]
+Analyzer: TypeAlias = Annotated[
+    Path | None,
+    typer.Option("--analyzer", metavar="FILE", help="File (TOML) with the [analyzer] of these sweeps."),
 ]
 Bands: TypeAlias = Annotated[
     list[str] | None,

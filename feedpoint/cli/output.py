@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+import os
 import sys
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from pathlib import Path
 from typing import TYPE_CHECKING, NamedTuple
 
@@ -50,13 +51,11 @@ class OutputOptions(NamedTuple):
     strict: bool
     quiet: bool
 
-    def check(self, sweeps: Sequence[Path], others: Sequence[Path | None] = ()) -> None:
-        """Refuse what contradicts itself or would overwrite an input (sweeps or others), before any work is done."""
+    def check(self, sweeps: Sequence[Path]) -> None:
+        """Refuse what contradicts itself or would overwrite a sweep, before any work is done."""
         if self.out is None:
             return
-        for read in (*sweeps, *others):
-            if read is not None and self.out.resolve() == read.resolve():
-                raise WrongUsage(f"--out {quoted(str(self.out))} is read by this command; choose another name.")
+        self.check_inputs(sweeps)
         written = _SUFFIXES.get(self.out.suffix.lower())
         if written is None:
             raise WrongUsage(f"--out {quoted(str(self.out))}: expected a file that ends in .csv, .json or .s1p.")
@@ -64,6 +63,12 @@ class OutputOptions(NamedTuple):
             raise WrongUsage(f"--format {self.form} and --out {quoted(str(self.out))} contradict each other.")
         if written == "s1p" and len(sweeps) > 1:
             raise WrongUsage(f"an .s1p file holds one sweep, not {len(sweeps)}; use .csv or .json.")
+
+    def check_inputs(self, files: Iterable[str | Path]) -> None:
+        """Refuse to overwrite what the command has read."""
+        for read in files:
+            if self.out is not None and os.path.realpath(self.out) == os.path.realpath(read):
+                raise WrongUsage(f"--out {quoted(str(self.out))} is read by this command; choose another name.")
 
     @property
     def file_form(self) -> str | None:
@@ -88,6 +93,7 @@ def deliver(
     form = options.file_form or options.form or Format.TABLE
     rows = [chosen_rows(result, choice, thin=form == Format.TABLE) for result in results]
     if options.out is not None:
+        options.check_inputs(file for result in results for file in result.run.files)
         _write_file(options.out, form, results, rows, presentation)
     else:
         _write_stdout(form, results, rows, presentation)
@@ -148,7 +154,7 @@ def _finish(results: Sequence[FeedpointResult], rows: Sequence[Rows], options: O
         about = f"{result.sweep.source}: " if len(results) > 1 else ""
         for finding in (*result.findings, *chosen.findings):
             serious = serious or finding.severity == "error"
-            text = f"{finding.severity} {finding.code}: {about}{finding.message}"
+            text = one_line(f"{finding.severity} {finding.code}: {about}{finding.message}")
             lines += wrapped(text, _STYLES[finding.severity], "  ", sys.stderr)
     if not options.quiet:
         show(lines, sys.stderr)

@@ -14,11 +14,15 @@ if TYPE_CHECKING:
 
 
 # What a cable that is in no catalogue needs.
+_NEEDED = ("length_m", "z0_ohm", "velocity_factor", "loss")
 _OPTION_OF_KEY = {
     "length_m": "--length",
     "z0_ohm": "--z0",
     "velocity_factor": "--velocity-factor",
     "loss": "--loss-at",
+    "length_tolerance_m": "--length-tolerance",
+    "loss_tolerance_percent": "--loss-tolerance",
+    "velocity_factor_tolerance": "--velocity-factor-tolerance",
 }
 
 
@@ -42,7 +46,7 @@ class CableOptions(NamedTuple):
     def table(self) -> dict[str, Any]:
         """Return the table of a section; empty if nothing was stated, `WrongUsage` if it was too little."""
         table = self.stated()
-        needed = ["length_m"] if "cable" in table else list(_OPTION_OF_KEY)
+        needed = _NEEDED[:1] if "cable" in table else _NEEDED
         missing = [_OPTION_OF_KEY[key] for key in needed if key not in table]
         if table and missing:
             raise WrongUsage(f"the run is not fully described; {' and '.join(missing)} missing.")
@@ -56,6 +60,7 @@ class RunOptions(NamedTuple):
     cable: CableOptions
     cables_file: Path | None
     temperature_c: float | None
+    analyzer: Path | None
     bands: list[str] | None
 
     def run(self) -> Run:
@@ -70,14 +75,14 @@ class RunOptions(NamedTuple):
             If what is described makes no run.
         """
         from feedpoint.assumed import Assumed
-        from feedpoint.run.sheet import read_run_sheet, run_of_section
+        from feedpoint.run.sheet import read_analyzer, read_run_sheet
 
         if self.sheet is not None and self.cable.stated():
             raise WrongUsage("--run and options that describe a cable contradict each other; use one of them.")
         if self.sheet is not None:
             run = read_run_sheet(self.sheet, cables_file=self.cables_file)
         elif table := self.cable.table():
-            run = run_of_section(table, cables_file=self.cables_file)
+            run = _run_of_options(table, self.cables_file)
         else:
             raise WrongUsage(
                 "the run is not described; use --run SHEET, or --cable NAME --length 31.5m, or --z0, "
@@ -85,7 +90,23 @@ class RunOptions(NamedTuple):
             )
         if self.temperature_c is not None:
             run = run.at_temperature(Assumed(self.temperature_c, "option", "--temperature"))
+        if self.analyzer is not None:
+            run = run.with_analyzer(read_analyzer(self.analyzer))
         return run.with_bands(bands_of_options(self.bands))
+
+
+def _run_of_options(table: dict[str, Any], cables_file: Path | None) -> Run:
+    """Return the run of one cable; what its section refuses about an option's value is wrong usage of that option."""
+    from feedpoint.errors import RunRefused
+    from feedpoint.run.sheet import run_of_section
+
+    try:
+        return run_of_section(table, cables_file=cables_file)
+    except RunRefused as refusal:
+        key = refusal.key.removeprefix("options, ").partition(",")[0]
+        if refusal.source or key not in _OPTION_OF_KEY:
+            raise
+        raise WrongUsage(refusal.message, source=_OPTION_OF_KEY[key]) from None
 
 
 def bands_of_options(texts: list[str] | None) -> tuple[Any, ...]:

@@ -104,7 +104,7 @@ def write_whole(path: Path, text: str) -> None:
     """
     content = text.encode("utf-8", errors="backslashreplace")
     try:
-        target = path.resolve()
+        target = Path(os.path.realpath(path))
         if target.exists() and not target.is_file():
             target.write_bytes(content)
         else:

@@ -20,6 +20,8 @@ def shown(value: float | None) -> str:
     if isinf(value):
         return "inf" if value > 0 else "-inf"
     size = abs(value)
+    if size >= 999_999.5:
+        return f"{value:.1e}"
     # The limits are where rounding carries into the next digit: 9.996 is 10.0.
     decimals = 2 if size < 9.995 else 1 if size < 999.95 else 0
     text = f"{value:.{decimals}f}"

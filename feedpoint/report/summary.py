@@ -71,7 +71,7 @@ def _cut(text: str) -> str:
 
 
 def _row(label: str, first: str, second: str = "", style: str = "") -> Line:
-    return Line(f"{label:<{_LABEL}}{first:<{_COLUMN}}{second}".rstrip(), style)
+    return Line(f"{label:<{_LABEL}}{first + '  ':<{_COLUMN}}{second}".rstrip(), style)
 
 
 def _sections(run: Run) -> Iterator[str]:
@@ -99,8 +99,10 @@ def _readings(result: FeedpointResult, ends: Sequence[Landmarks]) -> Iterator[Li
     yield _row("minimum SWR", *(_minimum(end, decimals) for end in ends))
     yield _row("SWR <= 2", *(_swr_2(end, decimals) for end in ends))
     for readings in zip(*(end.bands for end in ends), strict=True):
-        label = one_line(f"worst SWR {readings[0].band.name}")
-        yield _row(label if len(label) < _LABEL else label[: _LABEL - 4] + "...", *_bands(readings))
+        name = one_line(readings[0].band.name)
+        label = f"worst SWR {name}"
+        # A long name needs the room for itself.
+        yield _row(label if len(label) < _LABEL else name[: _LABEL - 1], *_bands(readings))
 
 
 def _resonances(end: Landmarks, decimals: int) -> list[str]:

@@ -60,7 +60,7 @@ def _table(layout: Sequence[Column], columns: Columns) -> list[Line]:
         cells.append([show_value(value) for value in columns[column.key].tolist()])
     heads = "".join(column.head.rjust(column.width) for column in layout)
     body = [
-        "".join(cell.rjust(column.width) for cell, column in zip(row, layout, strict=True))
+        "".join(f" {cell}".rjust(column.width) for cell, column in zip(row, layout, strict=True))
         for row in zip(*cells, strict=True)
     ]
     return [Line(_groups(layout), "bold"), Line(heads, "bold"), *(Line(text) for text in body)]

@@ -140,3 +140,7 @@ class CatalogueEntryForm(LossKeys):
     capacitance_pf_per_m: Positive | None = None
     delay_tempco_ppm_per_k: Annotated[float, Field(ge=-2000, le=2000)] | None = None
     sources: list[Text] = Field(default_factory=list)
+
+
+# The keys that hold lists of tables, with the form of one entry.
+ENTRIES: dict[str, type[Form]] = {"loss": LossPoint, "max_power_w": PowerPoint}

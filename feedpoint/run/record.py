@@ -53,7 +53,7 @@ class Run:
     """
     An ordered chain of sections, first = at the shack end, with the temperature of its cables during the sweep.
 
-    An empty chain is legal: the sweep was taken at the antenna terminals.
+    An empty chain is legal: the sweep was taken at the antenna terminals. `files` are those that the run was read from.
 
     Raises
     ------
@@ -68,6 +68,7 @@ class Run:
     analyzer: AnalyzerErrors = field(default_factory=AnalyzerErrors)
     bands: tuple[Band, ...] = ()
     source: str = "run"
+    files: tuple[str, ...] = ()
 
     def __post_init__(self) -> None:
         object.__setattr__(self, "sections", tuple(self.sections))
@@ -82,6 +83,10 @@ class Run:
         """Return the run at another cable temperature [degrees C], which may say whose word it is."""
         stated = temperature_c if isinstance(temperature_c, Assumed) else Assumed(temperature_c)
         return replace(self, temperature_c=stated)
+
+    def with_analyzer(self, analyzer: AnalyzerErrors) -> "Run":
+        """Return the run with the errors of another analyzer."""
+        return replace(self, analyzer=analyzer)
 
     def with_bands(self, bands: tuple[Band, ...]) -> "Run":
         """Return the run with more bands."""

@@ -1,6 +1,6 @@
 """Run sheets: the TOML file that describes a run."""
 
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from pathlib import Path
 from typing import Any
 
@@ -10,7 +10,9 @@ from feedpoint.run.build import BuildContext, section_of_table
 from feedpoint.run.catalogue import Catalogue, built_in_catalogue, read_catalogue
 from feedpoint.run.forms import AnalyzerForm, BandForm, RunForm
 from feedpoint.run.record import AnalyzerErrors, Band, Run
+from feedpoint.run.sections import Section
 from feedpoint.run.toml_tables import Table, checked, parse_toml, refuse_unknown_keys
+from feedpoint.run.two_port_file import TwoPortSection
 from feedpoint.sweep.text import decoded, read_bytes
 
 _TABLES = ("run", "section", "band", "analyzer")
@@ -59,10 +61,26 @@ def parse_run_sheet(
         analyzer=analyzer_errors(tables["analyzer"], source) if "analyzer" in tables else AnalyzerErrors(),
         bands=_bands(tables, source),
         source=source,
+        files=_files(sections, source, named),
     )
     if head.temperature_c is None:
         return run
     return run.at_temperature(Assumed(head.temperature_c, "sheet", "[run], temperature_c"))
+
+
+def read_analyzer(path: str | Path) -> AnalyzerErrors:
+    """Read a file that holds an `[analyzer]` table of its own; `RunRefused` names file and key."""
+    source = str(path)
+    tables = parse_toml(decoded(read_bytes(Path(path), RunRefused), source, RunRefused), source)
+    refuse_unknown_keys(tables, ("analyzer",), source, "")
+    if "analyzer" not in tables:
+        raise RunRefused("no [analyzer] table; expected one.", source=source)
+    return analyzer_errors(tables["analyzer"], source)
+
+
+def _files(sections: Sequence[Section], source: str, catalogue: Path | None) -> tuple[str, ...]:
+    two_ports = [section.file.value for section in sections if isinstance(section, TwoPortSection)]
+    return (source, *two_ports, *([str(catalogue)] if catalogue is not None else []))
 
 
 def run_of_section(table: dict[str, Any], *, cables_file: str | Path | None = None) -> Run:

@@ -9,7 +9,7 @@ from typing import Any, TypeVar
 from pydantic import ValidationError
 
 from feedpoint.errors import RunRefused, quoted
-from feedpoint.run.forms import Form
+from feedpoint.run.forms import ENTRIES, Form
 
 AnyForm = TypeVar("AnyForm", bound=Form)
 Table = Mapping[str, Any]
@@ -65,6 +65,17 @@ def refuse_unknown_keys(table: Table, known: Iterable[str], source: str, place: 
             raise RunRefused(f"unknown key {quoted(key)}.{hint}", source=source, key=place)
 
 
+# Where pydantic's own words are about Python.
+_EXPECTED = {
+    "model_type": "expected a table in braces",
+    "model_attributes_type": "expected a table in braces",
+    "dict_type": "expected a table in braces",
+    "list_type": "expected a list in brackets",
+    "too_short": "expected at least one entry",
+    "string_too_short": "expected a text that is not empty",
+}
+
+
 def _refusal(problem: ValidationError, source: str, place: str) -> RunRefused:
     errors = problem.errors(include_url=False)
     first = next((error for error in errors if error["type"] == "extra_forbidden"), errors[0])
@@ -74,7 +85,11 @@ def _refusal(problem: ValidationError, source: str, place: str) -> RunRefused:
     if first["type"] == "missing":
         return RunRefused("is missing; expected it here.", source=source, key=key)
     if first["type"] == "extra_forbidden":
-        return RunRefused(f"unknown key {quoted(str(names[-1]))}.", source=source, key=", ".join([place, *steps[:-1]]))
-    expected = first["msg"].replace("Input should be", "expected").replace("should have", "expected")
+        point = ENTRIES[str(names[0])]
+        near = get_close_matches(str(names[-1]), point.model_fields, n=1, cutoff=0.4)
+        hint = f" Did you mean {quoted(near[0])}?" if near else f" Known here: {', '.join(point.model_fields)}."
+        key = ", ".join([place, *steps[:-1]])
+        return RunRefused(f"unknown key {quoted(str(names[-1]))}.{hint}", source=source, key=key)
+    expected = _EXPECTED.get(first["type"]) or first["msg"].replace("Input should be", "expected")
     found = first["input"] if isinstance(first["input"], str) else repr(first["input"])
     return RunRefused(f"found {quoted(found)}, {expected}.", source=source, key=key)

@@ -77,7 +77,7 @@ class TwoPortSection(Section):
         nearest = np.searchsorted((self.frequency_hz[1:] + self.frequency_hz[:-1]) / 2.0, frequency_hz)
         if np.allclose(self.frequency_hz[nearest], frequency_hz, rtol=_SAME_FREQUENCY, atol=0.0):
             return self.scattering[nearest]
-        from scipy.interpolate import CubicSpline
+        from scipy.interpolate import CubicSpline  # 0.4 s to import
 
         scattering = np.empty((frequency_hz.size, 2, 2), dtype=complex)
         for i, j in ((0, 1), (1, 0)):

@@ -15,6 +15,7 @@ from numpy.typing import NDArray
 from feedpoint.errors import SweepRefused
 from feedpoint.finding import Finding
 from feedpoint.line import ComplexArray, RealArray
+from feedpoint.sweep.record import HIGHEST_HZ
 
 # Repeated points agree when they differ by no more than instruments print: 1e-6 of full reflection.
 _AGREEMENT = 1e-6
@@ -61,6 +62,15 @@ def _without_zero_frequency(points: Points, source: str, findings: list[Finding]
         at = int(np.argmax(negative))
         raise SweepRefused(
             f"the frequency {points.frequency_hz[at] / 1e6:.10g} MHz is negative; expected a positive one.",
+            source=source,
+            line=int(points.line[at]),
+        )
+    beyond = points.frequency_hz > HIGHEST_HZ
+    if np.any(beyond):
+        at = int(np.argmax(beyond))
+        raise SweepRefused(
+            f"the frequency {points.frequency_hz[at]:g} Hz is none of a sweep; expected at most {HIGHEST_HZ:g} Hz. Is "
+            "the unit right?",
             source=source,
             line=int(points.line[at]),
         )
@@ -117,6 +127,3 @@ def magnitude_finding(points: Points, source: str) -> list[Finding]:
     return [Finding("doubtful-file", "warning", message, {"gamma_magnitude": float(magnitude[worst])})]
 
 
-def reordered(points: Points, values: ComplexArray) -> Points:
-    """Return the points with other values (F, ...)."""
-    return Points(points.frequency_hz, values, points.line)

@@ -6,7 +6,7 @@ from pathlib import Path
 
 from feedpoint.errors import SweepRefused, WrongUsage
 from feedpoint.finding import Finding
-from feedpoint.sweep.checks import magnitude_finding, reordered
+from feedpoint.sweep.checks import magnitude_finding
 from feedpoint.sweep.record import Sweep
 from feedpoint.sweep.text import decoded, read_bytes
 from feedpoint.sweep.touchstone import NetworkData, parse_touchstone
@@ -65,7 +65,7 @@ def _one_port(network: NetworkData, source: str, sha256: str, port: int | None) 
     if port is None and ports > 1:
         message = f"{source}: the file has {ports} ports; the reflection of port 1 was taken. Choose with --port."
         findings.append(Finding("port-assumed", "note", message, {"port": 1, "ports": ports}))
-    own = reordered(network.points, network.points.values[:, chosen - 1, chosen - 1])
+    own = network.points._replace(values=network.points.values[:, chosen - 1, chosen - 1])
     findings += magnitude_finding(own, source)
     return Sweep(
         own.frequency_hz,

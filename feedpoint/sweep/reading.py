@@ -6,7 +6,7 @@ from itertools import pairwise
 
 import numpy as np
 
-from feedpoint.errors import WrongUsage, quoted
+from feedpoint.errors import SweepRefused, WrongUsage, quoted
 from feedpoint.line.reflection import OPEN_CIRCUIT_OHM
 from feedpoint.sweep.record import Sweep
 from feedpoint.units import NUMBER, parse_frequency_hz
@@ -72,4 +72,8 @@ def sweep_of_readings(texts: Sequence[str], reference_ohm: float) -> Sweep:
     if any(impedance == -reference_ohm for impedance in impedances):
         raise WrongUsage(f"an impedance of {-reference_ohm:g} ohm has no reflection against {reference_ohm:g} ohm.")
     source = texts[0] if len(texts) == 1 else f"{len(texts)} readings"
-    return Sweep.from_impedance(frequencies, impedances, reference_ohm=reference_ohm, source=source)
+    try:
+        return Sweep.from_impedance(frequencies, impedances, reference_ohm=reference_ohm, source=source)
+    except SweepRefused as refusal:
+        # A value on the command line, not a file.
+        raise WrongUsage(refusal.message, source=source) from None

@@ -14,6 +14,9 @@ from feedpoint.line.reflection import reflection_from_impedance
 
 # Far beyond what any fault of an analyzer shows; squares of larger numbers overflow sooner or later.
 MOST_MAGNITUDE = 1e6
+# Wide for anything that is swept, and narrow enough that nothing overflows on its way.
+LOWEST_HZ, HIGHEST_HZ = 1.0, 1e13
+SMALLEST_REFERENCE_OHM, LARGEST_REFERENCE_OHM = 1e-3, 1e6
 
 
 @dataclass(frozen=True, eq=False)
@@ -74,7 +77,10 @@ class Sweep:
         cls, frequency_hz: ArrayLike, impedance_ohm: ArrayLike, *, reference_ohm: float = 50.0, source: str = "sweep"
     ) -> "Sweep":
         """Sweep of an impedance (F,) [ohm], infinite values being open circuits, kept as its reflection."""
-        impedance = np.asarray(impedance_ohm, dtype=complex)
+        try:
+            impedance = np.asarray(impedance_ohm, dtype=complex)
+        except (TypeError, ValueError):
+            raise SweepRefused("the impedances are no numbers.", source=source) from None
         gamma = reflection_from_impedance(impedance, reference_ohm)
         return cls(np.asarray(frequency_hz, dtype=float), gamma, reference_ohm, source)
 
@@ -85,14 +91,16 @@ def _problem(frequency: RealArray, gamma: ComplexArray, reference_ohm: float) ->
         return f"{frequency.shape} frequencies and {gamma.shape} reflections; expected one of each per point."
     if frequency.size == 0:
         return "no points; a sweep has at least one."
-    if not (np.isfinite(reference_ohm) and reference_ohm > 0):
-        return f"the reference resistance is {reference_ohm} ohm; expected a positive number."
+    if not SMALLEST_REFERENCE_OHM <= reference_ohm <= LARGEST_REFERENCE_OHM:
+        return f"the reference resistance is {reference_ohm} ohm; expected a positive number such as 50."
     if not (np.all(np.isfinite(frequency)) and np.all(np.isfinite(gamma))):
         return "a value is not finite; every frequency and reflection must be a number."
     if np.abs(gamma).max() > MOST_MAGNITUDE:
         return f"a reflection of {np.abs(gamma).max():.3g} is none; expected about 1 at most."
     if frequency[0] <= 0:
         return f"the frequency {frequency[0]:g} Hz is not positive."
+    if not (frequency[0] >= LOWEST_HZ and frequency[-1] <= HIGHEST_HZ):
+        return f"{frequency[0]:g} to {frequency[-1]:g} Hz; expected frequencies from {LOWEST_HZ:g} to {HIGHEST_HZ:g}."
     if np.any(np.diff(frequency) <= 0):
         return f"the frequencies do not rise at point {int(np.argmax(np.diff(frequency) <= 0)) + 2}."
     return ""

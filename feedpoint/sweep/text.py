@@ -24,7 +24,7 @@ def read_bytes(path: Path, refusal: type[InputRefused] = SweepRefused) -> bytes:
         reason = getattr(problem, "strerror", None) or str(problem)
         raise refusal(f"cannot be read: {reason}.", source=str(path)) from None
     if len(content) > LARGEST_FILE_BYTES:
-        raise refusal("larger than 64 MB; expected a sweep, which has a few kilobytes.", source=str(path))
+        raise refusal("larger than 64 MB; expected a few kilobytes.", source=str(path))
     return content
 
 

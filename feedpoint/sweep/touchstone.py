@@ -96,6 +96,8 @@ def parse_touchstone(text: str, *, source: str, ports: int | None) -> NetworkDat
     doubts = sections.doubts + _doubts_about_values(header, records)
     if not header.options.unit_stated:
         doubts.append("the option line names no frequency unit: the standard's GHz was taken")
+    if not header.options.format_stated:
+        doubts.append("the option line names no number format: the standard's MA was taken")
     # A text that ends with a line end has an empty last line.
     if sections.data[-1][0] == sections.lines:
         doubts.append("the last record has no line end: it may be cut short")

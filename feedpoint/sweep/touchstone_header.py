@@ -16,6 +16,7 @@ import numpy as np
 
 from feedpoint.errors import SweepRefused, quoted
 from feedpoint.line import RealArray
+from feedpoint.sweep.record import LARGEST_REFERENCE_OHM, SMALLEST_REFERENCE_OHM
 from feedpoint.units import parse_number
 
 _UNITS_HZ = {"HZ": 1.0, "KHZ": 1e3, "MHZ": 1e6, "GHZ": 1e9}
@@ -46,6 +47,7 @@ class Options:
     number_format: str = "MA"
     reference_ohm: float = 50.0
     unit_stated: bool = False
+    format_stated: bool = False
 
     @property
     def unit(self) -> str:
@@ -117,7 +119,7 @@ def _take_option(header: Header, line: int, options: Options, word: str, rest: I
         options.parameter = word
         return "parameter"
     if word in _FORMATS:
-        options.number_format = word
+        options.number_format, options.format_stated = word, True
         return "number format"
     if word == "R":
         options.reference_ohm = positive_number(header, line, next(rest, ""), "reference resistance after 'R'")
@@ -150,8 +152,8 @@ def take_keyword(header: Header, line: int, text: str) -> str:
     match keyword:
         case "number of ports":
             _take_ports(header, line, match[2])
-        case "number of frequencies":
-            whole_number(header, line, match[2], "[Number of Frequencies]")
+        case "number of frequencies" | "number of noise frequencies":
+            whole_number(header, line, match[2], f"[{keyword.title().replace('Of', 'of')}]")
         case "mixed-mode order":
             raise header.refuse("mixed-mode data; expected single-ended ports.", line)
         case "two-port data order" if match[2].strip() not in ("12_21", "21_12"):
@@ -212,6 +214,8 @@ def positive_number(header: Header, line: int, word: str, what: str) -> float:
         raise header.refuse(f"{what}: found {quoted(word)}, expected a positive number such as 50.", line) from None
     if number <= 0:
         raise header.refuse(f"{what} is {word}; expected more than 0 ohm.", line)
+    if not SMALLEST_REFERENCE_OHM <= number <= LARGEST_REFERENCE_OHM:
+        raise header.refuse(f"{what} is {word}; expected one such as 50.", line)
     return number
 
 

@@ -248,6 +248,69 @@ def test_inspect_claims_nothing_about_the_antenna(place):
     assert "14.0033 " in run_feedpoint(*arguments, cwd=place).stdout
 
 
+def test_huge_values_keep_their_columns(place):
+    (place / "ends.s1p").write_text("# MHz S RI R 50\n3 0.9999999 0\n4 -0.9999999 0\n", encoding="ascii")
+    for command in (("inspect", "ends.s1p"), ("deembed", "ends.s1p", "--run", "run.toml")):
+        lines = run_feedpoint(*command, cwd=place).stdout.splitlines()
+        rows = [line.split() for line in lines[-2:]]
+        assert [row[0] for row in rows] == ["3.00", "4.00"]
+        assert len(rows[0]) == len(rows[1]) == (7 if command[0] == "inspect" else 9)
+        assert max(map(len, lines)) <= 80
+
+
+def test_names_in_findings_stay_on_their_line(place):
+    sheet = '[[section]]\nname = "a\\u001b[31mX\\nfake: line"\nz0_ohm = 80\nvelocity_factor = 0.66\n'
+    (place / "odd.toml").write_text(sheet + "length_m = 1\nconductor_loss = 1\n", encoding="ascii")
+    process = run_feedpoint("deembed", "a.s1p", "--run", "odd.toml", cwd=place)
+    assert "\x1b" not in process.stdout + process.stderr
+    assert [line.split()[1] for line in process.stderr.splitlines()] == ["reference-mismatch:"]
+
+
+def test_analyzer_of_a_file_of_its_own(place):
+    (place / "own.toml").write_text("[analyzer]\nextension_s = 1e-9\n", encoding="ascii")
+    line = ("deembed", "a.s1p", "--cable", "RG-213/U", "--length", "0m", "--format", "csv")
+    turned = list(csv.DictReader(io.StringIO(run_feedpoint(*line, "--analyzer", "own.toml", cwd=place).stdout)))
+    gamma = complex(float(turned[0]["feedpoint_gamma_re"]), float(turned[0]["feedpoint_gamma_im"]))
+    measured = 0.6 * np.exp(-2e-6j * 13e6) + 0.1j
+    assert gamma == pytest.approx(measured * np.exp(-4j * np.pi * 13e6 * 1e-9), abs=1e-8)
+    (place / "own.toml").write_text("[analyser]\n", encoding="ascii")
+    assert_refused(run_feedpoint(*line, "--analyzer", "own.toml", cwd=place), "own.toml", "Did you mean 'analyzer'")
+
+
+def test_nothing_that_was_read_is_written_over(place):
+    (place / "cat.csv").write_text('[[cable]]\nname="x"\nz0_ohm=50\nvelocity_factor=0.7\nconductor_loss=1\n')
+    (place / "own.toml").write_text('[run]\ncables_file="cat.csv"\n[[section]]\ncable="x"\nlength_m=1\n')
+    before = (place / "cat.csv").read_bytes()
+    process = run_feedpoint("deembed", "a.s1p", "--run", "own.toml", "--out", "cat.csv", cwd=place)
+    assert process.returncode == 2
+    assert (place / "cat.csv").read_bytes() == before
+    (place / "l1.csv").symlink_to("l2.csv")
+    (place / "l2.csv").symlink_to("l1.csv")
+    # A link that leads nowhere but to itself loses nothing when a file takes its place.
+    assert run_feedpoint("deembed", "a.s1p", "--run", "run.toml", "--out", "l1.csv", cwd=place).returncode == 0
+    assert (place / "l1.csv").read_text(encoding="ascii").startswith("frequency_hz,")
+
+
+@pytest.mark.parametrize(
+    ("option", "value"),
+    [
+        ("--velocity-factor", "0"),
+        ("--velocity-factor", "1.1"),
+        ("--loss-tolerance", "200%"),
+        ("--length-tolerance", "11m"),
+        ("--temperature", "-300C"),
+        ("--reference", "1e-300"),
+    ],
+)
+def test_values_out_of_range_are_wrong_usage_and_name_their_option(place, option, value):
+    line = {"--reading": "50@14MHz", "--z0": "50", "--velocity-factor": "0.66", "--loss-at": "10MHz:1dB/100m"}
+    line |= {"--length": "10m", option: value}
+    process = run_feedpoint("deembed", *(word for pair in line.items() for word in pair), cwd=place)
+    assert process.returncode == 2, process.stderr
+    assert option in process.stderr or "reference" in process.stderr
+    assert process.stdout == ""
+
+
 def test_interrupt_is_no_traceback(place):
     os.mkfifo(place / "slow.s1p")
     command = [sys.executable, "-m", "feedpoint", "deembed", "slow.s1p", "--run", "run.toml"]

@@ -105,6 +105,23 @@ def test_a_row_does_not_depend_on_which_rows_are_shown():
             assert np.array_equal(values, whole.columns[name][places], equal_nan=True)
 
 
+def test_rows_between_points_are_refused_beside_an_infinite_reflection():
+    run = parse_run_sheet("[[section]]\nseries_resistance_ohm=25\n")
+    # -25 ohm at the shack end is -50 ohm behind 25 ohm in series: exactly minus the reference.
+    result = deembed(Sweep(np.array([1e6, 2e6, 3e6, 4e6]), np.array([-3.0, -3.0, -3.0, 0.1 + 0.2j])), run)
+    with pytest.raises(WrongUsage, match="infinite"):
+        chosen_rows(result, RowChoice(at_hz=(1.5e6,)), thin=False)
+
+
+def test_result_between_points_is_one_of_its_own():
+    shack = embed(dipole(), RUN)
+    result = deembed(Sweep(FREQUENCY, shack.saved_shack_gamma()), RUN)
+    between = result.at(np.array([14.2213e6]))
+    assert between.sweep.gamma == pytest.approx(between.planes.gamma[0], abs=1e-12)
+    again = deembed(between.sweep, RUN)
+    assert again.impedance_ohm == pytest.approx(between.impedance_ohm, rel=1e-9)
+
+
 @pytest.mark.parametrize(
     "choice", [RowChoice(at_hz=(30e6,)), RowChoice(from_hz=21e6), RowChoice(from_hz=14.01e6, to_hz=14.02e6)]
 )

@@ -66,6 +66,22 @@ def test_steel_core_of_a_section_counts_for_the_points_of_the_catalogue(tmp_path
     assert steel.sections[0].loss.value.floor > 1.0
 
 
+@pytest.mark.parametrize(
+    ("text", "fragment"),
+    [
+        ("loss=[{mhz=1,db_per_100meter=3}]", "Did you mean 'db_per_100m'"),
+        ("loss=[{mhz=1,db_per_100m=3}]\nmax_power_w=[{mhz=1,watt=3}]", "Did you mean 'w'"),
+        ("loss=[]", "expected at least one entry"),
+        ("loss=[3]", "expected a table in braces"),
+        ('loss="3 dB"', "expected a list in brackets"),
+    ],
+)
+def test_nested_keys_are_checked_in_words(text, fragment):
+    with pytest.raises(RunRefused) as refusal:
+        section(f"z0_ohm=50\nvelocity_factor=0.66\nlength_m=1\n{text}\n")
+    assert fragment in str(refusal.value)
+
+
 def test_floor_term_joins_only_for_steel_cores():
     points = "z0_ohm=75\nvelocity_factor=0.66\nlength_m=1\nloss=[{mhz=1,db_per_100m=2.0},{mhz=10,db_per_100m=3.6},"
     points += "{mhz=100,db_per_100m=11.2}]\n"

@@ -91,7 +91,24 @@ def test_plain_ohms_and_siemens_in_version_1_are_doubted(option, values, doubted
     assert ("doubtful-file" in codes(network)) is doubted
 
 
-@pytest.mark.parametrize("text", ["# MHz Y RI R 50\n1 1e308 1e308\n", "# MHz Z RI R 1e-300\n1 1 1\n"])
-def test_huge_values_do_no_harm(text):
-    network = parse_touchstone(text, source="x.s1p", ports=1)
+def test_huge_values_do_no_harm():
+    network = parse_touchstone("# MHz Y RI R 50\n1 1e308 1e308\n", source="x.s1p", ports=1)
     assert np.all(np.isfinite(network.points.values))
+
+
+@pytest.mark.parametrize(
+    ("text", "place"),
+    [
+        ("# MHz S RI R 1e-300\n1 0 0\n", "line 1"),
+        ("# MHz S RI R 1e300\n1 0 0\n", "line 1"),
+        ("# GHz S RI R 50\n1 0 0\n14200 0 0\n", "line 3"),  # MHz taken for GHz
+    ],
+)
+def test_figures_beyond_all_sense_are_refused(text, place):
+    with pytest.raises(SweepRefused, match=place):
+        parse_touchstone(text, source="x.s1p", ports=1)
+
+
+@pytest.mark.parametrize("option", ["# S RI R 50", "# MHz S R 50"])
+def test_what_the_option_line_leaves_to_the_standard_is_doubted(option):
+    assert "doubtful-file" in codes(parse_touchstone(f"{option}\n1 0.1 0\n", source="x.s1p", ports=1))

@@ -45,6 +45,15 @@ def test_a_rest_of_calibration_leaves_the_matched_loss_unknown_not_nonsense(tmp_
     assert np.isfinite(result.impedance_ohm).all()
 
 
+def test_a_little_gain_is_told(tmp_path):
+    values = "0 0 1.02 0 1.02 0 0 0"
+    result = through(tmp_path, f"# MHz S RI R 50\n1 {values}\n2 {values}\n")
+    assert "two-port-gain" in [finding.code for finding in result.findings]
+    values = "0 0 .98 0 .98 0 0 0"
+    result = through(tmp_path, f"# MHz S RI R 50\n1 {values}\n2 {values}\n")
+    assert result.findings == ()
+
+
 def test_two_port_of_another_number_of_ports_is_refused(tmp_path):
     (tmp_path / "a.s1p").write_text("# MHz S RI R 50\n1 0 0\n", encoding="ascii")
     with pytest.raises(RunRefused, match=r"1 port\(s\); expected two"):
