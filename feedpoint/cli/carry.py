@@ -107,6 +107,7 @@ def _sources(
     paths: list[Path] | None, readings: list[str] | None, reference: float | None, port: int | None
 ) -> list[_Read]:
     """Return what is to be read, each as a call that reads it."""
+    from feedpoint.assumed import Assumed
     from feedpoint.sweep.reader import read_sweep
     from feedpoint.sweep.reading import sweep_of_readings
 
@@ -115,7 +116,8 @@ def _sources(
     if readings:
         if port is not None:
             raise WrongUsage("--port belongs to a sweep file, not to --reading.")
-        return [partial(sweep_of_readings, readings, reference or 50.0)]
+        stated = Assumed(50.0, "default") if reference is None else Assumed(reference, "option", "--reference")
+        return [partial(sweep_of_readings, readings, stated)]
     if reference is not None:
         raise WrongUsage("--reference belongs to --reading; a Touchstone file states its own.")
     if not paths:

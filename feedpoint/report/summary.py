@@ -9,6 +9,7 @@ from feedpoint.report.lines import Line
 from feedpoint.report.rounding import frequency_decimals, megahertz, plain_megahertz, shown, with_prefix
 from feedpoint.result import FeedpointResult
 from feedpoint.run.record import Run
+from feedpoint.sweep.record import Sweep
 
 _LABEL, _COLUMN = 18, 31
 _MOST_RESONANCES = 8
@@ -41,7 +42,7 @@ def summary_of_ends(result: FeedpointResult) -> list[Line]:
     """Return the summary of `deembed` and `embed`: readings at the antenna terminals beside those at the shack end."""
     verb = "de-embedded through" if result.direction == "deembed" else "embedded through"
     lines = [Line(one_line(f"{result.sweep.source}, {verb} {result.run.name}:"), "bold")]
-    lines += [Line(f"  {text}") for text in _sections(result.run)]
+    lines += [Line(f"  {text}") for text in (*_sections(result.run), *_reference(result.sweep))]
     lines += [Line(""), _row("", "at the antenna terminals", "at the shack end", "bold")]
     lines += _readings(result, [result.landmarks, result.shack_landmarks])
     lines += [Line(_loss(result)), Line(_interval_note(result.run)), Line("")]
@@ -83,6 +84,13 @@ def _sections(run: Run) -> Iterator[str]:
         yield one_line(f"{section.name}{cable}: {', '.join(parts)} [{', '.join(origins)}]")
     temperature = run.temperature_c
     yield f"cable temperature {temperature.value:g} C [{_ORIGINS[temperature.origin]}]"
+
+
+def _reference(sweep: Sweep) -> Iterator[str]:
+    """What readings refer to, which no file states."""
+    origin = sweep.understood_as.get("reference_origin")
+    if origin is not None:
+        yield f"reference of the readings {sweep.reference_ohm:g} ohm [{_ORIGINS[str(origin)]}]"
 
 
 def _figure(value: float | str, unit: str) -> str:

@@ -111,11 +111,11 @@ class LumpedSection(Section):
 
     def two_port(self, frequency_hz: RealArray, surroundings: Surroundings) -> SectionTwoPort:
         elements = (self.resistance_ohm, self.inductance_h, self.capacitance_f)
-        r, l, c = (None if element is None else element.value for element in elements)  # noqa: E741
+        ohm, henry, farad = (None if element is None else element.value for element in elements)
         if self.connection == "series":
-            chain = series_chain(series_impedance_ohm(frequency_hz, r or 0.0, l or 0.0, c))
+            chain = series_chain(series_impedance_ohm(frequency_hz, ohm or 0.0, henry or 0.0, farad))
         else:
-            chain = shunt_chain(parallel_admittance_s(frequency_hz, r, l, c or 0.0))
+            chain = shunt_chain(parallel_admittance_s(frequency_hz, ohm, henry, farad or 0.0))
         return lengthless(chain, frequency_hz, surroundings.reference_ohm)
 
 

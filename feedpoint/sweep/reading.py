@@ -2,10 +2,12 @@
 
 import re
 from collections.abc import Sequence
+from dataclasses import replace
 from itertools import pairwise
 
 import numpy as np
 
+from feedpoint.assumed import Assumed
 from feedpoint.errors import SweepRefused, WrongUsage, quoted
 from feedpoint.line.reflection import OPEN_CIRCUIT_OHM
 from feedpoint.sweep.record import Sweep
@@ -54,9 +56,10 @@ def parse_impedance_ohm(text: str, whole: str = "") -> complex:
     return value
 
 
-def sweep_of_readings(texts: Sequence[str], reference_ohm: float) -> Sweep:
+def sweep_of_readings(texts: Sequence[str], reference: Assumed[float]) -> Sweep:
     """
-    Return the sweep of readings, in any order; its reflection refers to `reference_ohm` [ohm].
+    Return the sweep of readings, in any order; its reflection refers to `reference` [ohm], and it keeps whose word
+    that is.
 
     Raises
     ------
@@ -68,12 +71,14 @@ def sweep_of_readings(texts: Sequence[str], reference_ohm: float) -> Sweep:
     for before, after in pairwise(frequencies):
         if before == after:
             raise WrongUsage(f"two readings at {after / 1e6:.9g} MHz; expected each frequency once.")
+    reference_ohm = reference.value
     impedances = [impedance for _, impedance in readings]
     if any(impedance == -reference_ohm for impedance in impedances):
         raise WrongUsage(f"an impedance of {-reference_ohm:g} ohm has no reflection against {reference_ohm:g} ohm.")
     source = texts[0] if len(texts) == 1 else f"{len(texts)} readings"
     try:
-        return Sweep.from_impedance(frequencies, impedances, reference_ohm=reference_ohm, source=source)
+        sweep = Sweep.from_impedance(frequencies, impedances, reference_ohm=reference_ohm, source=source)
+        return replace(sweep, understood_as={"format": "readings", "reference_origin": reference.origin})
     except SweepRefused as refusal:
         # A value on the command line, not a file.
         raise WrongUsage(refusal.message, source=source) from None

@@ -173,6 +173,12 @@ def test_temperature_option_overrides_the_sheet_and_says_so(place):
     assert "cable temperature 35 C [option]" in warm
 
 
+def test_reference_of_readings_and_its_origin_are_said(place):
+    line = ("deembed", "--reading", "30@14MHz", "--run", "run.toml")
+    assert "reference of the readings 50 ohm [assumed]" in run_feedpoint(*line, cwd=place).stdout
+    assert "readings 75 ohm [option]" in run_feedpoint(*line, "--reference", "75", cwd=place).stdout
+
+
 def test_hostile_names_are_shown_as_they_are_on_one_line(place):
     name = "roof[old] \x1b[31m.s1p"
     (place / name).write_bytes((place / "a.s1p").read_bytes())

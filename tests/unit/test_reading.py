@@ -2,6 +2,7 @@
 
 import pytest
 
+from feedpoint.assumed import Assumed
 from feedpoint.errors import WrongUsage
 from feedpoint.sweep.reading import parse_reading, sweep_of_readings
 
@@ -34,12 +35,13 @@ def test_reading_is_refused(text):
 
 
 def test_readings_become_a_rising_sweep():
-    sweep = sweep_of_readings(["50@14.3MHz", "open@14.1MHz", "0@14.2MHz"], 50.0)
+    sweep = sweep_of_readings(["50@14.3MHz", "open@14.1MHz", "0@14.2MHz"], Assumed(50.0, "default"))
     assert sweep.frequency_hz.tolist() == [14.1e6, 14.2e6, 14.3e6]
     assert sweep.gamma.tolist() == [1.0, -1.0, 0.0]
+    assert sweep.understood_as["reference_origin"] == "default"
 
 
 @pytest.mark.parametrize("texts", [["50@14MHz", "51@14MHz"], ["-50@14MHz"]])
 def test_readings_that_make_no_sweep_are_refused(texts):
     with pytest.raises(WrongUsage):
-        sweep_of_readings(texts, 50.0)
+        sweep_of_readings(texts, Assumed(50.0))
